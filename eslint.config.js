@@ -41,7 +41,7 @@ export default defineConfig(
   { files: ['server/**'], rules: mayNotImport(['src', 'worker']) },
   {
     files: ['worker/**'],
-    rules: mayNotImport(['src', 'server/(routes|controllers|middleware|services|policies|presenters|queues|openapi)']),
+    rules: mayNotImport(['src', 'server/(routes|controllers|middleware|services|policies|presenters|openapi)']),
   },
   {
     files: ['server/entities/**'],

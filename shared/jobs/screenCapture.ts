@@ -7,4 +7,5 @@ export const screenCapturePayloadSchema = z.strictObject({ captureId: z.uuid(), 
 export type ScreenCapturePayload = z.infer<typeof screenCapturePayloadSchema>;
 
 /** BullMQ refuses job ids with a colon or of digits only. */
-export const screenCaptureJobId = ({ captureId, attempt }: ScreenCapturePayload): string => `cap-${captureId}-a${attempt}`;
+export const screenCaptureJobId = ({ captureId, attempt }: ScreenCapturePayload): string =>
+  `cap-${captureId}-a${attempt}`;

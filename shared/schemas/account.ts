@@ -27,7 +27,9 @@ export const sessionUserSchema = z.strictObject({
   email: z.string(),
   name: z.string(),
   isAdmin: z.boolean(),
-  memberships: z.array(z.strictObject({ projectId: idSchema, projectName: z.string(), roles: z.array(projectRoleSchema) })),
+  memberships: z.array(
+    z.strictObject({ projectId: idSchema, projectName: z.string(), roles: z.array(projectRoleSchema) }),
+  ),
 });
 export type SessionUser = z.infer<typeof sessionUserSchema>;
 
@@ -49,7 +51,11 @@ export type CurrentSession = z.infer<typeof currentSessionSchema>;
 
 export const renewSessionSchema = z.strictObject({ renewalToken: z.string().min(20).max(200).optional() });
 
-export const inviteUserSchema = z.strictObject({ email: emailSchema, name: nameSchema, isAdmin: z.boolean().default(false) });
+export const inviteUserSchema = z.strictObject({
+  email: emailSchema,
+  name: nameSchema,
+  isAdmin: z.boolean().default(false),
+});
 export type InviteUser = z.infer<typeof inviteUserSchema>;
 
 export const updateUserSchema = z.strictObject({
@@ -63,5 +69,8 @@ export type UpdateUser = z.infer<typeof updateUserSchema>;
 export const setPasswordSchema = z.strictObject({ token: z.string().min(20).max(200), password: passwordSchema });
 export type SetPassword = z.infer<typeof setPasswordSchema>;
 export const requestPasswordResetSchema = z.strictObject({ email: emailSchema });
-export const changePasswordSchema = z.strictObject({ currentPassword: z.string().min(1).max(200), newPassword: passwordSchema });
+export const changePasswordSchema = z.strictObject({
+  currentPassword: z.string().min(1).max(200),
+  newPassword: passwordSchema,
+});
 export type ChangePassword = z.infer<typeof changePasswordSchema>;

@@ -33,7 +33,10 @@ export const acquisitionSheetSchema = z.strictObject({
   nominalSpeedHz: z.number().positive().max(1e6).optional(),
   supplyHz: z.number().positive().max(1e4).optional(),
   unit: z.string().trim().max(24).optional(),
-  scale: z.number().refine((value) => value !== 0, 'must not be 0').optional(),
+  scale: z
+    .number()
+    .refine((value) => value !== 0, 'must not be 0')
+    .optional(),
   logger: z.string().trim().max(80).optional(),
   position: z.string().trim().max(80).optional(),
   companion: z.string().trim().max(255).optional(),

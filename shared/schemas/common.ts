@@ -2,7 +2,10 @@ import { z } from 'zod';
 
 export const idSchema = z.uuid();
 export const nameSchema = z.string().trim().min(1).max(120);
-export const emailSchema = z.email().max(254).transform((value) => value.toLowerCase());
+export const emailSchema = z
+  .email()
+  .max(254)
+  .transform((value) => value.toLowerCase());
 
 /** The one error body of the API. */
 export const errorBodySchema = z.strictObject({

@@ -15,7 +15,10 @@ export const projectSchema = z.strictObject({
 export type ProjectDto = z.infer<typeof projectSchema>;
 export const projectListSchema = z.strictObject({ items: z.array(projectSchema) });
 
-export const createProjectSchema = z.strictObject({ name: nameSchema, description: z.string().trim().max(2000).default('') });
+export const createProjectSchema = z.strictObject({
+  name: nameSchema,
+  description: z.string().trim().max(2000).default(''),
+});
 export type CreateProject = z.infer<typeof createProjectSchema>;
 export const updateProjectSchema = z.strictObject({
   name: nameSchema.optional(),

@@ -10,7 +10,9 @@ export type Health = z.infer<typeof healthSchema>;
 /** GET /api/v1/settings: what the client must know before sign-in; limits are told before an upload. */
 export const publicSettingsSchema = z.strictObject({
   isDemo: z.boolean(),
-  demoAccounts: z.array(z.strictObject({ role: z.string(), name: z.string(), email: z.string(), password: z.string() })),
+  demoAccounts: z.array(
+    z.strictObject({ role: z.string(), name: z.string(), email: z.string(), password: z.string() }),
+  ),
   version: z.string(),
   limits: z.strictObject({
     maxFileBytes: z.int(),

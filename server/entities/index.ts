@@ -1,0 +1,15 @@
+export { AuditEntry } from './AuditEntry.js';
+export { Batch } from './Batch.js';
+export { Capture } from './Capture.js';
+export { ChannelResult } from './ChannelResult.js';
+export { Decision } from './Decision.js';
+export { FindingRow } from './FindingRow.js';
+export { MailMessage } from './MailMessage.js';
+export { Membership } from './Membership.js';
+export { OneTimeLink } from './OneTimeLink.js';
+export { Project } from './Project.js';
+export { Session } from './Session.js';
+export { Spectrum } from './Spectrum.js';
+export { ThresholdsVersion } from './ThresholdsVersion.js';
+export { User } from './User.js';
+export { WorkerHeartbeat } from './WorkerHeartbeat.js';
