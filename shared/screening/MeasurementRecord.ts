@@ -1,0 +1,178 @@
+/**
+ * What the worker measured on one channel: everything the judge needs and nothing that depends on a threshold.
+ * Plain JSON: no NaN, no Infinity, no typed arrays. Unless a name ends in another unit, levels are in dB re
+ * 1 (full scale or unit)², densities in dB re 1 (full scale or unit)²/Hz, one-sided; frequencies in Hz; times in s.
+ * `null` means "could not be measured"; the reason is in `obstacles`.
+ */
+export interface MeasurementRecord {
+  version: 1;
+  channel: number;
+  channelName: string;
+  unit: string;
+  format: 'wav' | 'csv';
+  /** Uniform or mean rate after the sheet, the header and the time stamps. */
+  sampleRateHz: number | null;
+  /** What the file itself says, before the sheet. */
+  headerRateHz: number | null;
+  samples: number;
+  durationS: number | null;
+  /** Why parts of the record are missing. */
+  obstacles: MeasurementObstacle[];
+  warnings: { code: string; message: string }[];
+  level: LevelMeasurement | null;
+  integrity: IntegrityMeasurement;
+  timeStamps: TimeStampMeasurement | null;
+  profile: ProfileMeasurement | null;
+  edge: EdgeMeasurement | null;
+  tones: ToneMeasurement[];
+  irregular: IrregularMeasurement | null;
+  companion: CompanionMeasurement | null;
+}
+
+export type MeasurementObstacle = 'rateUnknown' | 'tooFewSamples' | 'silent' | 'notFinite' | 'irregularStamps';
+
+/** Amplitude statistics over all finite samples. */
+export interface LevelMeasurement {
+  mean: number;
+  rms: number;
+  minimum: number;
+  maximum: number;
+  /** Power about the mean, dB. */
+  powerDb: number;
+  /** Fourth moment over squared variance; 3 for Gaussian noise. */
+  kurtosis: number;
+}
+
+export interface SpanS {
+  fromS: number;
+  toS: number;
+}
+
+export interface IntegrityMeasurement {
+  notFiniteCount: number;
+  clippedCount: number;
+  clippedShare: number;
+  clippedRuns: number;
+  /** The longest runs first, at most 16. */
+  clippedSpans: SpanS[];
+  clipsBelowFullScale: boolean;
+  missingShare: number;
+  dropoutCount: number;
+  dropouts: SpanS[];
+  offsetShare: number;
+  /** The step between neighbouring codes really used; null where none shows. */
+  quantum: number | null;
+  /** log2 of the used range in steps; null without a quantum. */
+  usedBits: number | null;
+  nominalBits: number | null;
+  /** Standard deviation of the signal over the step. */
+  stepsPerDeviation: number | null;
+  /** Bennett's floor q²/(6·fs) as a one-sided density, dB. */
+  quantisationFloorDb: number | null;
+}
+
+export interface TimeStampMeasurement {
+  irregular: boolean;
+  jitterShare: number;
+  missingShare: number;
+  gaps: SpanS[];
+  repeatedCount: number;
+  roundingStepS: number;
+}
+
+/** The survey spectrum pooled into equal cells from 0 to fs/2: what clear-to, guard share and pictures need. */
+export interface ProfileMeasurement {
+  cellHz: number;
+  resolutionHz: number;
+  segments: number;
+  /** Independent averages behind each mean: segments thinned by their overlap. */
+  effectiveSegments: number;
+  /** Mean density per cell, everything included. */
+  meanDb: number[];
+  /** Mean density per cell without the tones. */
+  tonelessDb: number[];
+  /** Bias-corrected median density per cell: for noise floors only. */
+  medianDb: number[];
+}
+
+export interface EdgeMeasurement {
+  /** Stretch over which the edge is measured. */
+  fromHz: number;
+  toHz: number;
+  /** Mean density, tones taken out. */
+  densityDb: number;
+  /** The same with everything left in. */
+  densityWithTonesDb: number;
+  /** Standard error of the mean density over the mean density (linear), from the spread between frames. */
+  relativeError: number;
+  /** Largest frame's edge density over the mean, dB: how bursty the edge is. */
+  burstDb: number;
+  kurtosis: number;
+  follows: EdgeFollowsMeasurement | null;
+  /** Deepest fall of the smoothed density within fs/20, dB (positive = falls), and where it starts. */
+  steepestFallDb: number;
+  steepestFallHz: number;
+  /** Fall of the smoothed density from the top of the band of plenty to the edge, dB. */
+  fallToEdgeDb: number;
+  /** Where the smoothed density leaves the strongest cell's level minus 60 dB for good. */
+  occupiedToHz: number;
+  mirror: MirrorMeasurement | null;
+}
+
+/** edge(t) = floor + slope·inband(t), least squares over frames. */
+export interface EdgeFollowsMeasurement {
+  frames: number;
+  slope: number;
+  slopeError: number;
+  floorDb: number | null;
+  inbandRangeDb: number;
+  correlation: number;
+  /** Share of the edge's mean power that the slope explains, dB; null when the slope is not positive. */
+  followingShareDb: number | null;
+}
+
+/** Images mirrored about a pivot below fs/2: the mark of a rate raised by repetition or linear interpolation. */
+export interface MirrorMeasurement {
+  pivotHz: number;
+  correlation: number;
+  /** Level of the mirrored stretch against its original, dB. */
+  imageDb: number;
+}
+
+export interface ToneMeasurement {
+  frequencyHz: number;
+  /** Cramér-Rao bound on the standard deviation of the frequency. */
+  boundHz: number;
+  /** Wander of the tone over the capture, as a standard deviation; 0 where it can't be told from the bound. */
+  wanderHz: number;
+  levelDb: number;
+  standsOutDb: number;
+  floorDb: number;
+  /** Peaks per Hz around the tone: the density behind the chance of a match. */
+  peaksPerHz: number;
+}
+
+export interface IrregularMeasurement {
+  meanRateHz: number;
+  /** Highest frequency that the time stamps can tell apart from its images. */
+  reachHz: number;
+  limitedBy: 'grid' | 'stampError' | 'sensorBand' | 'budget';
+  tones: IrregularTone[];
+}
+
+export interface IrregularTone {
+  frequencyHz: number;
+  uncertaintyHz: number;
+  levelDb: number;
+  standsOutDb: number;
+  /** Natural logarithm of the chance that noise alone gives a peak this high anywhere searched. */
+  logFalseAlarm: number;
+  /** How much the held-out samples' residual falls by this tone, dB. */
+  heldOutGainDb: number;
+}
+
+export interface CompanionMeasurement {
+  name: string;
+  sampleRateHz: number;
+  tones: ToneMeasurement[];
+}
