@@ -1,0 +1,17 @@
+export { AppError, type AppErrorOptions, type ErrorCause, type ErrorDetail } from './AppError.js';
+export { ConflictError } from './ConflictError.js';
+export { ForbiddenError } from './ForbiddenError.js';
+export { GoneError } from './GoneError.js';
+export { InternalError } from './InternalError.js';
+export { InsufficientStorageError } from './InsufficientStorageError.js';
+export { InvalidInputError } from './InvalidInputError.js';
+export { MethodNotAllowedError } from './MethodNotAllowedError.js';
+export { NotFoundError } from './NotFoundError.js';
+export { TooLargeError } from './TooLargeError.js';
+export { TooManyRequestsError } from './TooManyRequestsError.js';
+export { UnauthenticatedError } from './UnauthenticatedError.js';
+export { UnavailableError } from './UnavailableError.js';
+export { UnprocessableError } from './UnprocessableError.js';
+export { UnsupportedMediaTypeError } from './UnsupportedMediaTypeError.js';
+export { isUniqueViolation } from './isUniqueViolation.js';
+export { toAppError } from './toAppError.js';
