@@ -52,10 +52,11 @@ interface RouteOptions<
   success: RouteSuccess<R>;
   /** Codes that this route may answer beyond those of its access and schemas, by status. */
   errors?: Record<number, string>;
-  handle: (
-    input: RouteInput<Output<P>, Output<Q>, Output<B>, A>,
-  ) => Promise<R extends z.ZodType ? z.input<R> : void> | (R extends z.ZodType ? z.input<R> : void);
+  handle: (input: RouteInput<Output<P>, Output<Q>, Output<B>, A>) => Answer<R> | Promise<Answer<R>>;
 }
+
+/** Without a schema whatever is returned is dropped. */
+type Answer<R extends z.ZodType | undefined> = R extends z.ZodType ? z.input<R> : unknown;
 
 type Output<S extends z.ZodType | undefined> = S extends z.ZodType ? z.output<S> : undefined;
 

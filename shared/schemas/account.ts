@@ -74,3 +74,13 @@ export const changePasswordSchema = z.strictObject({
   newPassword: passwordSchema,
 });
 export type ChangePassword = z.infer<typeof changePasswordSchema>;
+
+/** GET /users */
+export const userListSchema = z.strictObject({ items: z.array(userSchema) });
+
+/** GET /users/directory: active users, to pick members from. */
+export const userDirectoryQuerySchema = z.strictObject({ search: z.string().trim().max(120).optional() });
+export const userDirectorySchema = z.strictObject({
+  items: z.array(z.strictObject({ id: idSchema, name: z.string(), email: z.string() })),
+});
+export type UserDirectory = z.infer<typeof userDirectorySchema>;

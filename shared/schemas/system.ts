@@ -45,3 +45,21 @@ export type DemoMail = z.infer<typeof demoMailSchema>;
 export type DemoMailDetail = z.infer<typeof demoMailDetailSchema>;
 
 export const mailStates = ['pending', 'sending', 'sent', 'failed', 'unknown'] as const;
+export const mailStateSchema = z.enum(mailStates);
+
+/** GET /mail: what the outbox holds, without its texts (they carry one-time links). */
+export const mailMessageSchema = z.strictObject({
+  id: z.uuid(),
+  kind: z.string(),
+  recipient: z.string(),
+  subject: z.string(),
+  state: mailStateSchema,
+  attempts: z.int(),
+  lastError: z.string().nullable(),
+  createdAt: z.iso.datetime(),
+  sentAt: z.iso.datetime().nullable(),
+});
+export type MailMessageDto = z.infer<typeof mailMessageSchema>;
+export const mailListSchema = z.strictObject({ items: z.array(mailMessageSchema) });
+export const mailListQuerySchema = z.strictObject({ state: mailStateSchema.optional() });
+export const demoMailListSchema = z.strictObject({ items: z.array(demoMailSchema) });

@@ -163,3 +163,28 @@ export const putThresholdsSchema = z.strictObject({
   reason: z.string().trim().min(3).max(500),
 });
 export type PutThresholds = z.infer<typeof putThresholdsSchema>;
+
+const { shape } = thresholdsSchema;
+/** Some of the values: those left out keep what is in force. */
+export const partialThresholdsSchema = z.strictObject({
+  guardStart: shape.guardStart.unwrap().optional(),
+  maxGuardShareDb: shape.maxGuardShareDb.unwrap().optional(),
+  minSkirtDb: shape.minSkirtDb.unwrap().optional(),
+  requiredProtectionDb: shape.requiredProtectionDb.unwrap().optional(),
+  toneStandsOutDb: shape.toneStandsOutDb.unwrap().optional(),
+  confidence: shape.confidence.unwrap().optional(),
+  rateFactor: shape.rateFactor.unwrap().optional(),
+  maxClippedShare: shape.maxClippedShare.unwrap().optional(),
+  maxMissingShare: shape.maxMissingShare.unwrap().optional(),
+  maxJitterShare: shape.maxJitterShare.unwrap().optional(),
+  minDurationS: shape.minDurationS.unwrap().optional(),
+  independentReview: shape.independentReview.unwrap().optional(),
+});
+export type PartialThresholds = z.infer<typeof partialThresholdsSchema>;
+
+/** Body of PUT /projects/:projectId/thresholds: values with a reason, or, for scripts, the bare values. */
+export const changeThresholdsSchema = z.union([
+  putThresholdsSchema.extend({ values: partialThresholdsSchema }),
+  partialThresholdsSchema,
+]);
+export type ChangeThresholds = z.infer<typeof changeThresholdsSchema>;
