@@ -51,3 +51,5 @@ export function rateLimits(config: Pick<Config, 'SIGN_IN_ATTEMPTS_PER_15_MIN'>) 
     renewal: [limit({ max: attempts * 20, key: addressOf, failuresOnly: true })],
   };
 }
+
+export type RateLimits = ReturnType<typeof rateLimits>;

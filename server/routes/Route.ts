@@ -52,7 +52,7 @@ interface RouteOptions<
   success: RouteSuccess<R>;
   /** Codes that this route may answer beyond those of its access and schemas, by status. */
   errors?: Record<number, string>;
-  handle: (input: RouteInput<Output<P>, Output<Q>, Output<B>, A>) => Answer<R> | Promise<Answer<R>>;
+  handle: (input: RouteInput<Output<P>, Output<Q>, Output<B>, NoInfer<A>>) => Answer<R> | Promise<Answer<R>>;
 }
 
 /** Without a schema whatever is returned is dropped. */
