@@ -135,6 +135,8 @@ export interface EdgeFollowsMeasurement {
 export interface MirrorMeasurement {
   pivotHz: number;
   correlation: number;
+  /** Highest correlation about any other pivot: a comb of harmonics is mirrored about many. */
+  runnerUp: number;
   /** Level of the mirrored stretch against its original, dB. */
   imageDb: number;
 }

@@ -1,0 +1,117 @@
+import { blockResponse, type Complex } from './blockResponse.js';
+import { fitToneGroup } from './fitToneGroup.js';
+import type { ToneDemodulator } from './ToneDemodulator.js';
+
+export interface RefinedTone {
+  /** Offset from the demodulator's frequency, rad a sample. */
+  delta: number;
+  /** x[n] contains amplitude·exp(iωn) and its conjugate, phase at the demodulator's origin. */
+  amplitude: Complex;
+  /** Blocks of the demodulator less every other tone: interleaved real and imaginary parts. */
+  residual: Float64Array;
+}
+
+/**
+ * Maximum-likelihood frequencies and amplitudes of several tones from their demodulated blocks: cyclic relaxation (each
+ * tone is re-estimated with all others taken out; Li & Stoica 1996) and a last joint least-squares fit of close tones.
+ * @param searchRad largest offset searched, rad a sample
+ */
+export function refineTones(demodulator: ToneDemodulator, searchRad: number, rounds = 4): RefinedTone[] {
+  const tones: RefinedTone[] = demodulator.values.map((values) => ({
+    delta: 0,
+    amplitude: { real: 0, imaginary: 0 },
+    residual: Float64Array.from(values),
+  }));
+  const order = [...tones.keys()].sort((a, b) => energy(demodulator.values[b]) - energy(demodulator.values[a]));
+  for (let round = 0; round < rounds; round++) {
+    for (const index of order) {
+      const tone = tones[index] as RefinedTone;
+      tone.residual = lessOthers(demodulator, tones, index);
+      const reach = round === 0 ? searchRad : searchRad / 4;
+      tone.delta = bestOffset(demodulator, tone.residual, round === 0 ? 0 : tone.delta, reach);
+      tone.amplitude = amplitudeAt(demodulator, tone.residual, tone.delta);
+    }
+  }
+  fitToneGroup(demodulator, tones);
+  tones.forEach((tone, index) => (tone.residual = lessOthers(demodulator, tones, index)));
+  return tones;
+}
+
+function energy(values: Float64Array | undefined): number {
+  return values === undefined ? 0 : values.reduce((sum, value) => sum + value * value, 0);
+}
+
+/** The blocks of one tone with the leakage of all others, and of all conjugates, taken out. */
+function lessOthers(demodulator: ToneDemodulator, tones: RefinedTone[], index: number): Float64Array {
+  const { omegas, blocks, blockFrames, origin, values } = demodulator;
+  const result = Float64Array.from(values[index] as Float64Array);
+  const here = omegas[index] as number;
+  tones.forEach((other, place) => {
+    const { real: a, imaginary: b } = other.amplitude;
+    if (a === 0 && b === 0) return;
+    const omega = (omegas[place] as number) + other.delta;
+    for (let block = 0; block < blocks; block++) {
+      const image = blockResponse(-omega - here, block, blockFrames, origin);
+      let real = a * image.real + b * image.imaginary;
+      let imaginary = a * image.imaginary - b * image.real;
+      if (place !== index) {
+        const direct = blockResponse(omega - here, block, blockFrames, origin);
+        real += a * direct.real - b * direct.imaginary;
+        imaginary += a * direct.imaginary + b * direct.real;
+      }
+      result[2 * block] = (result[2 * block] as number) - real;
+      result[2 * block + 1] = (result[2 * block + 1] as number) - imaginary;
+    }
+  });
+  return result;
+}
+
+function bestOffset(demodulator: ToneDemodulator, z: Float64Array, centre: number, reach: number): number {
+  const span = demodulator.blocks * demodulator.blockFrames;
+  const power = (delta: number): number => {
+    const a = amplitudeAt(demodulator, z, delta);
+    return a.real * a.real + a.imaginary * a.imaginary;
+  };
+  const step = Math.PI / (2 * span);
+  const steps = Math.ceil(reach / step);
+  let best = centre;
+  let bestPower = -1;
+  for (let k = -steps; k <= steps; k++) {
+    const value = power(centre + k * step);
+    if (value > bestPower) [best, bestPower] = [centre + k * step, value];
+  }
+  let width = step;
+  for (let turn = 0; turn < 24; turn++) {
+    const below = power(best - width);
+    const above = power(best + width);
+    const curvature = below - 2 * bestPower + above;
+    const shift = curvature < 0 ? (0.5 * width * (below - above)) / curvature : 0;
+    best += Math.max(-width, Math.min(width, shift));
+    bestPower = power(best);
+    width /= 2;
+  }
+  return best;
+}
+
+/** Least-squares amplitude of a single tone at the given offset: Σ z·conj(D) / Σ |D|². */
+function amplitudeAt(demodulator: ToneDemodulator, z: Float64Array, delta: number): Complex {
+  const { blocks, blockFrames, origin } = demodulator;
+  const middle = (blockFrames - 1) / 2 - origin;
+  const half = Math.sin(delta / 2);
+  const length = Math.abs(half) < 1e-12 ? blockFrames : Math.sin((delta * blockFrames) / 2) / half;
+  let c = Math.cos(delta * middle);
+  let s = -Math.sin(delta * middle);
+  const stepC = Math.cos(delta * blockFrames);
+  const stepS = -Math.sin(delta * blockFrames);
+  let real = 0;
+  let imaginary = 0;
+  for (let block = 0; block < blocks; block++) {
+    const [x, y] = [z[2 * block] as number, z[2 * block + 1] as number];
+    real += x * c - y * s;
+    imaginary += x * s + y * c;
+    const next = c * stepC - s * stepS;
+    s = s * stepC + c * stepS;
+    c = next;
+  }
+  return { real: real / (blocks * length), imaginary: imaginary / (blocks * length) };
+}
