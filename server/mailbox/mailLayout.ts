@@ -3,6 +3,8 @@ import { escapeHtml } from './escapeHtml.js';
 export interface MailParagraphs {
   heading: string;
   paragraphs: string[];
+  /** Ready HTML between paragraphs and action; whoever makes it escapes what it holds. */
+  detailHtml?: string;
   /** One thing to do, as a link. */
   action?: { label: string; url: string };
   closing?: string[];
@@ -11,7 +13,7 @@ export interface MailParagraphs {
 const ink = '#1c2a44';
 
 /** Plain HTML that every mail reader shows: no outside images, no fonts, no style sheet. All text is escaped. */
-export function mailHtml({ heading, paragraphs, action, closing = [] }: MailParagraphs): string {
+export function mailHtml({ heading, paragraphs, detailHtml = '', action, closing = [] }: MailParagraphs): string {
   const paragraph = (text: string): string => `<p style="margin:0 0 16px">${escapeHtml(text)}</p>`;
   const link = action
     ? `<p style="margin:0 0 16px"><a href="${escapeHtml(action.url)}" style="color:${ink};font-weight:bold">${escapeHtml(action.label)}</a><br><span style="font-size:13px">${escapeHtml(action.url)}</span></p>`
@@ -22,6 +24,7 @@ export function mailHtml({ heading, paragraphs, action, closing = [] }: MailPara
     '<div style="max-width:560px;margin:0 auto;padding:32px 24px">',
     `<h1 style="font-size:20px;margin:0 0 16px">${escapeHtml(heading)}</h1>`,
     ...paragraphs.map(paragraph),
+    detailHtml,
     link,
     ...closing.map(paragraph),
     '</div></body></html>',

@@ -1,0 +1,52 @@
+import type { DataSource } from 'typeorm';
+import { failCapture } from '../repositories/failCapture.js';
+import type { ScreeningQueue } from './ScreeningQueue.js';
+
+/** A row this young may just be on its way between row and queue, or between queue and row. */
+const graceS = 5;
+/** Workers lost on one capture before it is given up. */
+const maxFaults = 4;
+
+interface OpenRow {
+  id: string;
+  attempt: number;
+  fault_count: number;
+}
+
+/**
+ * Finds captures that should have a live job and have none (lost queue, killed worker, refused add) and puts them back to
+ * `received`; one that has cost too many workers is failed, so that a poisonous file can't run for ever.
+ * Safe with several processes at once: each change names the attempt it saw.
+ * @returns the number of captures put right
+ */
+export async function reconcileCaptures(dataSource: DataSource, queue: ScreeningQueue): Promise<number> {
+  const open = (await dataSource.query(
+    `SELECT id, attempt, fault_count FROM captures
+      WHERE state IN ('queued', 'screening')
+        AND greatest(queued_at, started_at) < now() - make_interval(secs => $1)
+      ORDER BY queued_at LIMIT 2000`,
+    [graceS],
+  )) as OpenRow[];
+  let changed = 0;
+  for (const { id, attempt, fault_count: faultCount } of open) {
+    const payload = { captureId: id, attempt };
+    if (await queue.isLive(payload)) continue;
+    if (faultCount + 1 > maxFaults) {
+      const isFailed = await failCapture(dataSource, payload, {
+        code: 'WORKER_DIED',
+        message:
+          'Screening stopped without a result several times. Retry it; if that fails again, send the file to whoever runs this installation.',
+        line: null,
+      });
+      if (isFailed) changed += 1;
+      continue;
+    }
+    const [, affected] = (await dataSource.query(
+      `UPDATE captures SET state = 'received', fault_count = fault_count + (state = 'screening')::int, progress = 0
+        WHERE id = $1 AND attempt = $2 AND state IN ('queued', 'screening')`,
+      [id, attempt],
+    )) as [unknown, number];
+    changed += affected;
+  }
+  return changed;
+}
