@@ -5,6 +5,7 @@ import type { AppDependencies } from '../AppDependencies.js';
 import { presentMember } from '../presenters/presentMember.js';
 import { presentProject } from '../presenters/presentProject.js';
 import { presentThresholds } from '../presenters/presentThresholds.js';
+import type { Actor } from '../policies/Actor.js';
 import type { RouteInput } from '../routes/Route.js';
 import { MemberService } from '../services/MemberService.js';
 import { ProjectService } from '../services/ProjectService.js';
@@ -16,7 +17,7 @@ interface ProjectParams {
 interface MemberParams extends ProjectParams {
   userId: string;
 }
-type Input<P = unknown, B = unknown> = RouteInput<P, unknown, B, 'signedIn'>;
+type Input<P = unknown, B = unknown> = RouteInput<P, unknown, B, Actor>;
 
 export function createProjectController(deps: AppDependencies) {
   const projects = new ProjectService(deps);

@@ -4,6 +4,7 @@ import type { AppDependencies } from '../AppDependencies.js';
 import { ForbiddenError } from '../errors/index.js';
 import { clientHeaderName } from '../middleware/requireClientHeader.js';
 import { presentSessionUser } from '../presenters/presentSessionUser.js';
+import type { Actor } from '../policies/Actor.js';
 import type { RouteInput } from '../routes/Route.js';
 import { sessionCookies } from '../security/sessionCookies.js';
 import { SessionService, type IssuedSession } from '../services/SessionService.js';
@@ -42,12 +43,12 @@ export function createSessionController(deps: AppDependencies) {
       return answer(response, await service.renew(fromBody ?? cookies.readRenewal(request)));
     },
 
-    read: ({ actor, request }: RouteInput<unknown, unknown, unknown, 'signedIn'>): CurrentSession => ({
+    read: ({ actor, request }: RouteInput<unknown, unknown, unknown, Actor>): CurrentSession => ({
       user: presentSessionUser(actor),
       expiresAt: (request.accessExpiresAt ?? deps.now()).toISOString(),
     }),
 
-    signOut: async ({ actor, response }: RouteInput<unknown, unknown, unknown, 'signedIn'>): Promise<void> => {
+    signOut: async ({ actor, response }: RouteInput<unknown, unknown, unknown, Actor>): Promise<void> => {
       await service.signOut(actor);
       cookies.clear(response);
     },

@@ -1,6 +1,7 @@
 import type { InviteUser, UpdateUser, UserDirectory, UserDto } from '../../shared/schemas/account.js';
 import type { AppDependencies } from '../AppDependencies.js';
 import { presentUser } from '../presenters/presentUser.js';
+import type { Actor } from '../policies/Actor.js';
 import type { RouteInput } from '../routes/Route.js';
 import { UserService } from '../services/UserService.js';
 
@@ -18,13 +19,13 @@ export function createUserController(deps: AppDependencies) {
       return { items: users.map(({ id, name, email }) => ({ id, name, email })) };
     },
 
-    invite: async ({ actor, body }: RouteInput<unknown, unknown, InviteUser, 'admin'>): Promise<UserDto> =>
+    invite: async ({ actor, body }: RouteInput<unknown, unknown, InviteUser, Actor>): Promise<UserDto> =>
       presentUser(await service.invite(actor, body)),
 
-    inviteAgain: ({ actor, params }: RouteInput<UserParams, unknown, unknown, 'admin'>) =>
+    inviteAgain: ({ actor, params }: RouteInput<UserParams, unknown, unknown, Actor>) =>
       service.inviteAgain(actor, params.userId),
 
-    update: async ({ actor, params, body }: RouteInput<UserParams, unknown, UpdateUser, 'admin'>): Promise<UserDto> =>
+    update: async ({ actor, params, body }: RouteInput<UserParams, unknown, UpdateUser, Actor>): Promise<UserDto> =>
       presentUser(await service.update(actor, params.userId, body)),
   };
 }

@@ -8,11 +8,12 @@ export type HttpMethod = 'get' | 'post' | 'put' | 'patch' | 'delete';
 export type Access = 'anyone' | 'signedIn' | 'admin';
 
 /** What a controller is given: parsed values only, never the raw request's. */
-export interface RouteInput<P = unknown, Q = unknown, B = unknown, A extends Access = Access> {
+export interface RouteInput<P = unknown, Q = unknown, B = unknown, Who = Actor | undefined> {
   params: P;
   query: Q;
   body: B;
-  actor: A extends 'anyone' ? undefined : Actor;
+  /** Nobody where anyone may come in. */
+  actor: Who;
   /** For cookies, uploads and streams only. */
   request: Request;
   response: Response;
@@ -52,8 +53,10 @@ interface RouteOptions<
   success: RouteSuccess<R>;
   /** Codes that this route may answer beyond those of its access and schemas, by status. */
   errors?: Record<number, string>;
-  handle: (input: RouteInput<Output<P>, Output<Q>, Output<B>, NoInfer<A>>) => Answer<R> | Promise<Answer<R>>;
+  handle: (input: RouteInput<Output<P>, Output<Q>, Output<B>, Asker<A>>) => Answer<R> | Promise<Answer<R>>;
 }
+
+type Asker<A extends Access> = A extends 'anyone' ? undefined : Actor;
 
 /** Without a schema whatever is returned is dropped. */
 type Answer<R extends z.ZodType | undefined> = R extends z.ZodType ? z.input<R> : unknown;

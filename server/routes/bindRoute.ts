@@ -24,20 +24,21 @@ export function bindRoute(
     next();
   };
 
-  const answer: RequestHandler = async (req, res) => {
+  const respond: RequestHandler = async (req, res) => {
     const body = validateBody(route, req);
     const input = { ...validateAddress(route, req), body, request: req, response: res, actor: req.actor };
+    res.status(route.success.status);
     const result = await route.handle(input as RouteInput);
     if (route.success.contentType || res.headersSent) return;
     if (!route.success.schema) {
-      res.status(route.success.status).end();
+      res.end();
       return;
     }
     // Out of production a presenter that strays from its schema is found at once; in production it costs nothing.
-    const json = deps.config.NODE_ENV === 'production' ? result : route.success.schema.parse(result);
-    res.status(route.success.status).json(json);
+    const answer = deps.config.NODE_ENV === 'production' ? result : route.success.schema.parse(result);
+    res.json(answer);
   };
 
   const readBody = route.bodyType === 'multipart' ? [] : [readJson];
-  router[route.method](route.path, ...guards, checkAddress, ...readBody, ...(route.before ?? []), answer);
+  router[route.method](route.path, ...guards, checkAddress, ...readBody, ...(route.before ?? []), respond);
 }
