@@ -22,6 +22,8 @@ export function createApp(deps: AppDependencies): Express {
   app.disable('x-powered-by');
   app.set('trust proxy', config.TRUST_PROXY_HOPS);
   app.set('query parser', 'simple');
+  // Answers of the API are not stored anywhere, so there is nothing to compare them with.
+  app.set('etag', false);
 
   app.use(requestId, requestLog(logger), securityHeaders(config), compression(), cookieParser());
 

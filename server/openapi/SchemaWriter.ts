@@ -6,6 +6,14 @@ export type JsonObject = Record<string, unknown>;
 const localPrefix = '#/$defs/';
 const sharedPrefix = '#/components/schemas/';
 
+const common = {
+  unrepresentable: 'any',
+  // A format says it already; the long pattern beside it only hides it from readers.
+  override: ({ jsonSchema }: { jsonSchema: z.core.JSONSchema.BaseSchema }) => {
+    if (jsonSchema.format) delete jsonSchema.pattern;
+  },
+} as const;
+
 function pointIntoComponents(value: unknown): unknown {
   if (Array.isArray(value)) return value.map(pointIntoComponents);
   if (typeof value !== 'object' || value === null) return value;
@@ -24,7 +32,7 @@ export class SchemaWriter {
 
   /** What a caller may send: defaults are optional here. Written out in place. */
   request(schema: z.ZodType): JsonObject {
-    const { $schema: _dialect, ...json } = z.toJSONSchema(schema, { io: 'input', unrepresentable: 'any' });
+    const { $schema: _dialect, ...json } = z.toJSONSchema(schema, { ...common, io: 'input' });
     return json;
   }
 
@@ -35,7 +43,7 @@ export class SchemaWriter {
       $defs = {},
       id: _id,
       ...json
-    } = z.toJSONSchema(schema, { io: 'output', unrepresentable: 'any', metadata: namedSchemas });
+    } = z.toJSONSchema(schema, { ...common, io: 'output', metadata: namedSchemas });
     for (const [name, definition] of Object.entries($defs)) this.addComponent(name, definition);
     const name = namedSchemas.get(schema)?.id;
     if (!name) return pointIntoComponents(json) as JsonObject;

@@ -30,7 +30,7 @@ export async function checkHealth({
   const [database, queuePart, storagePart] = await Promise.all([
     check(() => dataSource.query('select 1'), 'The database does not answer.'),
     check(() => queue.check(), 'The queue (Redis) does not answer.'),
-    check(() => storage.checkWritable(), 'The storage cannot be written.'),
+    check(() => storage.check(), 'The storage cannot be written.'),
   ]);
   const parts = { database, queue: queuePart, storage: storagePart };
   const isOk = Object.values(parts).every(({ ok }) => ok);

@@ -1,0 +1,72 @@
+import { randomUUID } from 'node:crypto';
+import { mkdtemp, rm } from 'node:fs/promises';
+import { tmpdir } from 'node:os';
+import path from 'node:path';
+import type { DataSource } from 'typeorm';
+import type { AppDependencies } from '../../server/AppDependencies.js';
+import { parseConfig, type Config } from '../../server/config/config.js';
+import { createDataSource } from '../../server/createDataSource.js';
+import { createLogger } from '../../server/logging/createLogger.js';
+import { ScreeningQueue } from '../../server/queues/ScreeningQueue.js';
+import { createStorage } from '../../server/storage/createStorage.js';
+import { TestClock } from './TestClock.js';
+
+/** A secret that appears in no log and no answer; tests look for it. */
+export const testJwtSecret = 'test-secret-0123456789-0123456789-abcdef';
+
+export interface TestDependencies extends AppDependencies {
+  clock: TestClock;
+  queueName: string;
+  release: () => Promise<void>;
+}
+
+export function testConfig(storageDir: string, overrides: Partial<Config> = {}): Config {
+  const parsed = parseConfig({
+    NODE_ENV: 'test',
+    DATABASE_URL: process.env.DATABASE_URL,
+    REDIS_URL: process.env.REDIS_URL,
+    SMTP_URL: 'smtp://127.0.0.1:9',
+    JWT_SECRET: testJwtSecret,
+    // The cheapest there is: the suite hashes often, and the cost has a test of its own.
+    BCRYPT_COST: '4',
+    LOG_LEVEL: process.env.LOG_LEVEL ?? 'silent',
+    STORAGE_DIR: storageDir,
+    DEMO_MAIL_DIR: path.join(storageDir, 'mail'),
+  });
+  return Object.freeze({ ...parsed, ...overrides });
+}
+
+async function truncateAll(dataSource: DataSource): Promise<void> {
+  const tables = dataSource.entityMetadatas.map(({ tableName }) => `"${tableName}"`).join(', ');
+  await dataSource.query(`truncate ${tables} cascade`);
+}
+
+/** Real PostgreSQL and Redis from the environment, an empty database, a queue and a folder of their own. */
+export async function createTestDependencies(overrides: Partial<Config> = {}): Promise<TestDependencies> {
+  const storageDir = await mkdtemp(path.join(tmpdir(), 'overfold-test-'));
+  const config = testConfig(storageDir, overrides);
+  const dataSource = await createDataSource(config.DATABASE_URL).initialize();
+  await dataSource.runMigrations();
+  await truncateAll(dataSource);
+  const logger = createLogger(config, 'server');
+  const queueName = `screening-${randomUUID()}`;
+  const queue = new ScreeningQueue(config.REDIS_URL, logger, queueName);
+  const clock = new TestClock();
+  return {
+    config,
+    dataSource,
+    logger,
+    storage: createStorage(config),
+    queue,
+    queueName,
+    clock,
+    version: '0.0.0-test',
+    now: clock.now,
+    clientDir: null,
+    release: async () => {
+      await queue.close();
+      await dataSource.destroy();
+      await rm(storageDir, { recursive: true, force: true });
+    },
+  };
+}
