@@ -1,5 +1,5 @@
 import { json, type RequestHandler, type Router } from 'express';
-import type { AppDependencies } from '../AppDependencies.js';
+import type { Config } from '../config/config.js';
 import { requireAdmin } from '../middleware/authenticate.js';
 import { requireClientHeader } from '../middleware/requireClientHeader.js';
 import { validateAddress, validateBody } from '../middleware/validate.js';
@@ -12,7 +12,7 @@ const readJson = json({ limit: '256kb', type: 'application/json' });
 export function bindRoute(
   router: Router,
   route: Route,
-  deps: Pick<AppDependencies, 'config'>,
+  deps: { config: Pick<Config, 'NODE_ENV'> },
   authenticate: RequestHandler,
 ): void {
   const guards: RequestHandler[] = [];
