@@ -7,6 +7,8 @@ const keptJobs = 1000;
 /** Tries of one job after passing faults; a lost worker is counted apart (maxStalledCount, and the reconciler). */
 const triesPerJob = 4;
 const firstBackOffMs = 2_000;
+/** A Redis that takes connections but doesn't answer must not hold up an upload. */
+const commandTimeoutMs = 2_000;
 
 /** States in which BullMQ still intends to run a job. */
 const liveStates = new Set(['waiting', 'active', 'delayed', 'prioritized', 'waiting-children']);
@@ -23,6 +25,7 @@ export class ScreeningQueue {
     this.connection = new Redis(redisUrl, {
       maxRetriesPerRequest: 1,
       enableOfflineQueue: false,
+      commandTimeout: commandTimeoutMs,
       retryStrategy: (tries) => Math.min(2_000, 100 * tries),
     });
     const warn = (error: Error): void => logger.warn({ err: error.message }, 'queue not reachable');

@@ -69,8 +69,10 @@ async function queueSummaries(manager: EntityManager, config: Config, batch: Bat
  */
 export function finishBatch(dataSource: DataSource, config: Config, batchId: string): Promise<boolean> {
   return dataSource.transaction(async (manager) => {
+    // The lock first, in a statement of its own: the second one then counts what is committed by whoever held it before.
+    await manager.query(`SELECT id FROM batches WHERE id = $1 AND state = 'screening' FOR UPDATE`, [batchId]);
     const [, affected] = (await manager.query(
-      `UPDATE batches SET state = 'review', screened_at = now()
+      `UPDATE batches SET state = 'review', screened_at = coalesce(screened_at, now())
         WHERE id = $1 AND state = 'screening' AND completed_at IS NOT NULL
           AND NOT EXISTS (SELECT 1 FROM captures WHERE batch_id = $1 AND state NOT IN ('screened', 'failed'))`,
       [batchId],
