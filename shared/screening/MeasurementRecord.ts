@@ -133,7 +133,10 @@ export interface EdgeFollowsMeasurement {
 
 /** Images mirrored about a pivot below fs/2: the mark of a rate raised by repetition or linear interpolation. */
 export interface MirrorMeasurement {
+  /** The old folding frequency: fs/2 over the factor. */
   pivotHz: number;
+  /** How many times the rate was raised. */
+  factor: number;
   correlation: number;
   /** Highest correlation about any other pivot: a comb of harmonics is mirrored about many. */
   runnerUp: number;
@@ -176,5 +179,6 @@ export interface IrregularTone {
 export interface CompanionMeasurement {
   name: string;
   sampleRateHz: number;
+  durationS: number;
   tones: ToneMeasurement[];
 }

@@ -1,0 +1,63 @@
+import type { MeasurementRecord, ProfileMeasurement } from './MeasurementRecord.js';
+
+/** Few figures, each of which moves the fold score in one direction only. */
+export interface FoldFeatures {
+  /** Power the edge density would carry over the whole band, less the quantisation floor, over total power, dB. Up: folded. */
+  edgeShareDb: number;
+  /** Steepest fall of the density within a tenth of fs/2, dB. Up: filtered. */
+  cliffDb: number;
+  /** Share of the edge that follows the in-band level over time, dB, −20 … 0. Up: folded. */
+  followingDb: number;
+  /** 0 … 1: how far the upper half of the band is a flat, steady floor, which says nothing either way. */
+  floorLikeness: number;
+  /** The rate was raised by repetition or straight lines: the energy at the edge is images, not folded. */
+  hasImages: boolean;
+}
+
+const decibels = (power: number): number => 10 * Math.log10(Math.max(power, 1e-40));
+
+export function foldFeatures(record: MeasurementRecord): FoldFeatures | null {
+  const { profile, edge, sampleRateHz, integrity } = record;
+  if (profile === null || edge === null || sampleRateHz === null) return null;
+  const total = profile.meanDb.reduce((sum, level) => sum + 10 ** (level / 10), 0) * profile.cellHz;
+  const density = 10 ** (edge.densityDb / 10);
+  const quantisation = integrity.quantisationFloorDb === null ? 0 : 10 ** (integrity.quantisationFloorDb / 10);
+  const above = Math.max(density - 1.3 * quantisation, 1e-4 * density);
+  const share = edge.follows?.followingShareDb ?? null;
+  return {
+    edgeShareDb: decibels((above * sampleRateHz) / 2 / Math.max(total, 1e-40)),
+    cliffDb: edge.steepestFallDb,
+    followingDb: share === null ? -20 : Math.min(0, Math.max(-20, share)),
+    floorLikeness: floorLikeness(profile, edge.kurtosis),
+    hasImages: showsImages(record),
+  };
+}
+
+/** Images are believed when the mirror is nearly perfect about the factor's own pivots and worse about all others. */
+export function showsImages({ edge }: MeasurementRecord): boolean {
+  const mirror = edge?.mirror ?? null;
+  if (mirror === null) return false;
+  return mirror.correlation > 0.95 && mirror.correlation - mirror.runnerUp > 0.15 && mirror.imageDb < 0;
+}
+
+const floorBands = 10;
+
+/** 1 when ten bands between 0.5 and 0.97·fs/2 differ by no more than chance explains and the edge is steady over time. */
+function floorLikeness(profile: ProfileMeasurement, kurtosis: number): number {
+  const cells = profile.tonelessDb.length;
+  const width = 0.47 / floorBands;
+  const levels = Array.from({ length: floorBands }, (_, band) => {
+    const from = Math.floor((0.5 + band * width) * cells);
+    const to = Math.max(from + 1, Math.floor((0.5 + (band + 1) * width) * cells));
+    const values = profile.tonelessDb.slice(from, to);
+    return decibels(values.reduce((sum, level) => sum + 10 ** (level / 10), 0) / values.length);
+  });
+  const binsPerBand = Math.max(1, (width * cells * profile.cellHz) / profile.resolutionHz);
+  const chanceDb = 4.34 / Math.sqrt(binsPerBand * profile.effectiveSegments);
+  if (chanceDb > 0.6) return 0;
+  const mean = levels.reduce((sum, level) => sum + level, 0) / floorBands;
+  const spread = Math.sqrt(
+    Math.max(0, levels.reduce((sum, level) => sum + (level - mean) ** 2, 0) / floorBands - chanceDb ** 2),
+  );
+  return Math.exp(-((spread / 0.5) ** 2)) * Math.exp(-((Math.max(0, kurtosis - 1.3) / 0.5) ** 2));
+}

@@ -1,0 +1,151 @@
+import type { AcquisitionSheet } from '../schemas/acquisitionSheet.js';
+import type { Finding, Tone } from '../schemas/screening.js';
+import type { Thresholds } from '../schemas/thresholds.js';
+import { aliasHz, candidatesHz, zoneOf } from './foldArithmetic.js';
+import { foldedComb } from './foldedComb.js';
+import { foldedToneFinding } from './foldedToneFinding.js';
+import { findFamilies, type HarmonicFamily, matchSigmas, toneErrorHz } from './harmonicFamily.js';
+import { judgeMovedTones } from './judgeMovedTones.js';
+import type { MeasurementRecord, ToneMeasurement } from './MeasurementRecord.js';
+
+export interface TonesJudgement {
+  tones: Tone[];
+  findings: Finding[];
+  /** Log-likelihood ratio of the tone evidence for folding, 0 without any. */
+  logRatio: number;
+}
+
+/** Relative error of a frequency written into a sheet: speeds and supplies are known to about this. */
+const statedRelativeError = 2e-3;
+const candidatesListed = 4;
+const largestLogRatio = 6;
+
+/** Explains each tone that stands out: stated source, harmonic, supply, folded source, folded member of a family, or nothing. */
+export function judgeTones(record: MeasurementRecord, thresholds: Thresholds, sheet: AcquisitionSheet): TonesJudgement {
+  const { sampleRateHz, durationS } = record;
+  if (sampleRateHz === null || durationS === null || durationS === 0) return { tones: [], findings: [], logRatio: 0 };
+  const binHz = 1 / durationS;
+  const measured = record.tones.filter((tone) => tone.standsOutDb >= thresholds.toneStandsOutDb);
+  const reachHz = sheet.sensorBandHz ?? 2 * sampleRateHz;
+  const tones: Tone[] = measured.map((tone) => ({
+    frequencyHz: tone.frequencyHz,
+    uncertaintyHz: Math.max(tone.boundHz, tone.wanderHz),
+    levelDb: tone.levelDb,
+    standsOutDb: tone.standsOutDb,
+    explanation: 'unexplained',
+    candidatesHz: candidatesHz(tone.frequencyHz, sampleRateHz, reachHz).slice(0, candidatesListed),
+    confidence: 0,
+  }));
+  if (record.companion !== null) judgeMovedTones(tones, measured, record.companion, sampleRateHz, binHz, reachHz);
+  const families = findFamilies(measured, statedFundamentals(sheet, sampleRateHz), binHz);
+  explainInBand(tones, families);
+  explainKnownSources(tones, measured, sheet, sampleRateHz, binHz);
+  const free = (): number[] =>
+    tones.map((_, index) => index).filter((index) => tones[index]?.explanation === 'unexplained');
+  const usable = families.filter((family) => family.members.length >= 2);
+  for (const family of usable) {
+    const combsTried = 2 * usable.length;
+    for (const match of foldedComb(measured, free(), family, sampleRateHz, binHz, combsTried)) {
+      const tone = tones[match.tone] as Tone;
+      if (tone.explanation !== 'unexplained') continue;
+      const confidence = 1 - match.chanceProbability;
+      if (confidence < 0.5) continue;
+      Object.assign(tone, {
+        explanation: 'foldedHarmonic',
+        trueFrequencyHz: match.trueFrequencyHz,
+        confidence,
+        chanceProbability: match.chanceProbability,
+        explainedBy: `${match.multiple} × ${family.fundamentalHz.toPrecision(6)} Hz`,
+      } satisfies Partial<Tone>);
+    }
+  }
+  const folded = tones.filter(
+    (tone) => tone.explanation.startsWith('folded') || tone.explanation === 'movedBetweenRates',
+  );
+  const leastChance = folded.reduce((least, tone) => Math.min(least, tone.chanceProbability ?? 1), 1);
+  const logRatio =
+    folded.length === 0 ? 0 : Math.min(largestLogRatio, Math.max(0, -Math.log(Math.max(leastChance, 1e-6)) / 1.5));
+  const findings = folded
+    .filter((tone) => tone.confidence >= thresholds.confidence)
+    .map((tone) => foldedToneFinding(tone, sampleRateHz));
+  return { tones, findings: [...findings, ...sourcesAtFold(sheet, sampleRateHz)], logRatio };
+}
+
+function statedFundamentals(
+  sheet: AcquisitionSheet,
+  sampleRateHz: number,
+): { name: string; frequencyHz: number; errorHz: number }[] {
+  const stated: { name: string; frequencyHz: number; errorHz: number }[] = [];
+  const add = (name: string, frequencyHz: number | undefined): void => {
+    if (frequencyHz === undefined || frequencyHz >= sampleRateHz / 2) return;
+    stated.push({ name, frequencyHz, errorHz: statedRelativeError * frequencyHz });
+  };
+  add('supply', sheet.supplyHz);
+  add('shaft', sheet.nominalSpeedHz);
+  return stated;
+}
+
+function explainInBand(tones: Tone[], families: HarmonicFamily[]): void {
+  for (const family of families) {
+    for (const { tone: index, multiple } of family.members) {
+      const tone = tones[index] as Tone;
+      if (tone.explanation !== 'unexplained') continue;
+      Object.assign(tone, {
+        explanation: family.name === 'supply' ? 'supply' : 'harmonic',
+        confidence: 1 - family.chanceProbability,
+        chanceProbability: family.chanceProbability,
+        explainedBy: `${multiple} × ${family.fundamentalHz.toPrecision(6)} Hz`,
+      } satisfies Partial<Tone>);
+    }
+  }
+}
+
+/** Sources at stated frequencies: in band they explain a tone; beyond fs/2 a tone at their alias is folded, against chance. */
+function explainKnownSources(
+  tones: Tone[],
+  measured: ToneMeasurement[],
+  sheet: AcquisitionSheet,
+  sampleRateHz: number,
+  binHz: number,
+): void {
+  const sources = sheet.sources ?? [];
+  for (const source of sources) {
+    const name = source.name === undefined || source.name === '' ? `${source.frequencyHz} Hz` : source.name;
+    const isBeyond = source.frequencyHz > sampleRateHz / 2;
+    const expectedHz = aliasHz(source.frequencyHz, sampleRateHz);
+    let best: { index: number; distance: number; chance: number } | null = null;
+    measured.forEach((tone, index) => {
+      if (tones[index]?.explanation !== 'unexplained') return;
+      const sigma = Math.hypot(toneErrorHz(tone, binHz), 2e-4 * source.frequencyHz, binHz / 2);
+      const distance = Math.abs(tone.frequencyHz - expectedHz);
+      if (distance > matchSigmas * sigma || (best !== null && distance >= best.distance)) return;
+      const chance = 1 - Math.exp(-2 * matchSigmas * sigma * tone.peaksPerHz);
+      best = { index, distance, chance: Math.min(1, chance * Math.max(1, sources.length)) };
+    });
+    if (best === null) continue;
+    const { index, chance } = best as { index: number; chance: number };
+    Object.assign(tones[index] as Tone, {
+      explanation: isBeyond ? 'foldedSource' : 'knownSource',
+      ...(isBeyond ? { trueFrequencyHz: source.frequencyHz } : {}),
+      confidence: 1 - chance,
+      chanceProbability: chance,
+      explainedBy: name,
+    } satisfies Partial<Tone>);
+  }
+}
+
+/** Sources exactly at a multiple of fs/2 land on 0 Hz or fs/2, where their level depends on the phase. */
+function sourcesAtFold(sheet: AcquisitionSheet, sampleRateHz: number): Finding[] {
+  return (sheet.sources ?? [])
+    .filter(({ frequencyHz }) => zoneOf(frequencyHz, sampleRateHz).direction === 'none')
+    .map(({ name, frequencyHz }) => ({
+      kind: 'sourceAtFold' as const,
+      severity: 'limit' as const,
+      confidence: 1,
+      frequencyHz: aliasHz(frequencyHz, sampleRateHz),
+      trueFrequencyHz: frequencyHz,
+      text: `The source ${name ?? ''} at ${frequencyHz} Hz is a multiple of half the sampling rate: it lands on ${aliasHz(frequencyHz, sampleRateHz)} Hz with a level that depends on its phase, and can't be seen.`,
+      evidence: { sourceHz: frequencyHz, sampleRateHz },
+      method: 'fold arithmetic',
+    }));
+}
