@@ -1,5 +1,5 @@
 import { randomUUID } from 'node:crypto';
-import type { EntityManager } from 'typeorm';
+import { LessThan, type EntityManager } from 'typeorm';
 import type { SignIn } from '../../shared/schemas/account.js';
 import type { AppDependencies } from '../AppDependencies.js';
 import { Session, User } from '../entities/index.js';
@@ -60,6 +60,8 @@ export class SessionService {
         expiresAt: new Date(at.getTime() + config.SESSION_ABSOLUTE_DAYS * 86_400_000),
         revokedAt: null,
       });
+      // Nobody can use these any more; without this the table would only grow.
+      await manager.delete(Session, { userId: user.id, expiresAt: LessThan(at) });
       await manager.insert(Session, session);
       await manager.update(User, { id: user.id }, { lastSeenAt: at });
       await addAuditEntry(manager, {
