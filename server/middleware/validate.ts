@@ -22,17 +22,8 @@ export function describeIssues(issues: readonly z.core.$ZodIssue[], prefix: stri
         message: 'This name is not known here. Leave it out.',
       }));
     }
-    // Of several allowed shapes the one that fits best says what is wrong.
-    const closest = issue.code === 'invalid_union' ? closestShape(issue.errors) : undefined;
-    if (closest) return describeIssues(closest, path);
     return [{ path, message: issue.message }];
   });
-}
-
-function closestShape(shapes: z.core.$ZodIssue[][]): z.core.$ZodIssue[] | undefined {
-  const unknownNames = (issues: z.core.$ZodIssue[]): number =>
-    issues.reduce((sum, issue) => sum + (issue.code === 'unrecognized_keys' ? issue.keys.length : 0), 0);
-  return [...shapes].sort((a, b) => unknownNames(a) - unknownNames(b) || a.length - b.length)[0];
 }
 
 function parsePart(schema: z.ZodType | undefined, value: unknown, prefix: string, details: ErrorDetail[]): unknown {

@@ -10,10 +10,9 @@ import { addAuditEntry } from './audit.js';
 
 type History = [ThresholdsVersion, ...ThresholdsVersion[]];
 
-/** Bare values come from scripts, which have no reason to give. */
-function splitReason(change: ChangeThresholds): { values: PartialThresholds; reason: string } {
-  if ('values' in change) return { values: change.values, reason: change.reason };
-  return { values: change as PartialThresholds, reason: 'changed through the API' };
+/** Scripts may send bare values, and need not say why. */
+function splitReason({ values, reason, ...bare }: ChangeThresholds): { values: PartialThresholds; reason: string } {
+  return { values: values ?? bare, reason: reason ?? 'changed through the API' };
 }
 
 export class ThresholdsService {

@@ -182,9 +182,27 @@ export const partialThresholdsSchema = z.strictObject({
 });
 export type PartialThresholds = z.infer<typeof partialThresholdsSchema>;
 
-/** Body of PUT /projects/:projectId/thresholds: values with a reason, or, for scripts, the bare values. */
-export const changeThresholdsSchema = z.union([
-  putThresholdsSchema.extend({ values: partialThresholdsSchema }),
-  partialThresholdsSchema,
-]);
+/**
+ * Body of PUT /projects/:projectId/thresholds: `{values, reason}`, or, for scripts, the bare values.
+ * One object rather than a choice of two, so that a wrong value is named by its own path.
+ */
+export const changeThresholdsSchema = partialThresholdsSchema
+  .extend({
+    values: partialThresholdsSchema.optional(),
+    reason: putThresholdsSchema.shape.reason.optional(),
+  })
+  .superRefine(({ values, reason, ...bare }, context) => {
+    const bareNames = Object.entries(bare).filter(([, value]) => value !== undefined);
+    if (!values && bareNames.length === 0) {
+      context.addIssue({ code: 'custom', path: ['values'], message: 'Give at least one value.' });
+    }
+    if (values && reason === undefined) {
+      context.addIssue({ code: 'custom', path: ['reason'], message: 'Say why the thresholds change.' });
+    }
+    if (values) {
+      for (const [name] of bareNames) {
+        context.addIssue({ code: 'custom', path: [name], message: 'Put this into "values", beside the others.' });
+      }
+    }
+  });
 export type ChangeThresholds = z.infer<typeof changeThresholdsSchema>;
