@@ -1,0 +1,34 @@
+import { CaptureError } from '../../shared/formats/CaptureError.js';
+import { screenFile } from '../screenFile.js';
+import type { ScreenTask, ScreenTaskResult } from './ScreenTask.js';
+import { toScreeningResult } from './toScreeningResult.js';
+import { verifyStoredFile } from './verifyStoredFile.js';
+
+const progressStep = 0.02;
+
+/** Entry of a computing thread: one capture from file to judgement. */
+export function screenThread(task: ScreenTask): ScreenTaskResult {
+  let reported = 0;
+  try {
+    verifyStoredFile(task.filePath, task);
+    const screened = screenFile(task.filePath, {
+      fileName: task.fileName,
+      sheet: task.acquisition,
+      csvLayout: task.csvLayout,
+      thresholds: task.thresholds,
+      onProgress: (share) => {
+        if (share - reported < progressStep) return;
+        reported = share;
+        task.progressPort.postMessage(share);
+      },
+    });
+    return { ok: true, result: toScreeningResult(screened) };
+  } catch (error) {
+    if (!(error instanceof CaptureError)) throw error;
+    return { ok: false, failure: { code: error.code, message: error.message, line: error.line ?? null } };
+  } finally {
+    task.progressPort.close();
+  }
+}
+
+export default screenThread;
