@@ -1,5 +1,7 @@
 import type { AppDependencies } from '../AppDependencies.js';
 import { rateLimits } from '../middleware/rateLimits.js';
+import { batchRoutes } from './batchRoutes.js';
+import { captureRoutes } from './captureRoutes.js';
 import { mailRoutes } from './mailRoutes.js';
 import { passwordRoutes } from './passwordRoutes.js';
 import { projectRoutes } from './projectRoutes.js';
@@ -17,6 +19,8 @@ export function createRoutes(deps: AppDependencies): Route[] {
     ...passwordRoutes(deps, limits),
     ...userRoutes(deps),
     ...projectRoutes(deps),
+    ...batchRoutes(deps),
+    ...captureRoutes(deps),
     ...mailRoutes(deps),
   ];
 }
