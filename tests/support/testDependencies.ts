@@ -3,6 +3,7 @@ import { mkdtemp, rm } from 'node:fs/promises';
 import { tmpdir } from 'node:os';
 import path from 'node:path';
 import type { DataSource } from 'typeorm';
+import { vi } from 'vitest';
 import type { AppDependencies } from '../../server/AppDependencies.js';
 import { parseConfig, type Config } from '../../server/config/config.js';
 import { createDataSource } from '../../server/createDataSource.js';
@@ -51,6 +52,8 @@ export async function createTestDependencies(overrides: Partial<Config> = {}): P
   const logger = createLogger(config, 'server');
   const queueName = `screening-${randomUUID()}`;
   const queue = new ScreeningQueue(config.REDIS_URL, logger, queueName);
+  // The producer refuses at once while its connection is still being made; a test should not meet that moment.
+  await vi.waitFor(() => queue.check(), { timeout: 10_000, interval: 20 });
   const clock = new TestClock();
   return {
     config,
