@@ -26,14 +26,6 @@ const { values } = parseArgs({
   },
 });
 const given = values.corpus ?? process.env['OVERFOLD_CORPUS'];
-const directory = given ?? mkdtempSync(join(tmpdir(), 'overfold-bench-'));
-if (given === undefined) writeSyntheticSet(directory, Number(values.seed));
-try {
-  report(screenAll(readLabelledSet(directory)));
-} finally {
-  if (given === undefined) rmSync(directory, { recursive: true, force: true });
-}
-
 function screenAll(captures: LabelledCapture[]): Screened[] {
   return captures.map((truth) => {
     const other = values.pairs
@@ -208,4 +200,12 @@ function listMisses(folded: (Screened & { score: number })[], clean: (Screened &
   const alarms = [...clean].sort((a, b) => b.score - a.score);
   for (const one of alarms.filter((each, index) => index < 15 || each.screen?.verdict === 'folded'))
     console.log(line(one));
+}
+
+const directory = given ?? mkdtempSync(join(tmpdir(), 'overfold-bench-'));
+if (given === undefined) writeSyntheticSet(directory, Number(values.seed));
+try {
+  report(screenAll(readLabelledSet(directory)));
+} finally {
+  if (given === undefined) rmSync(directory, { recursive: true, force: true });
 }
