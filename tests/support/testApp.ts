@@ -12,7 +12,7 @@ import { createTestDependencies, type TestDependencies } from './testDependencie
 
 const methods = ['get', 'post', 'put', 'patch', 'delete'] as const;
 export type TestMethod = (typeof methods)[number];
-/** Requests under /api/v1: `client.get('/projects')`. */
+/** Requests under /api/v1: `client.get('/projects')`; a path that begins with /api/ is taken as it is. */
 export type TestClient = Record<TestMethod, (path: string) => Test>;
 
 export interface TestSession {
@@ -37,7 +37,7 @@ export interface TestApp {
 function clientOf(app: Express, prepare: (test: Test) => Test): TestClient {
   const entries = methods.map((method) => [
     method,
-    (path: string): Test => prepare(supertest(app)[method](`/api/v1${path}`)),
+    (path: string): Test => prepare(supertest(app)[method](path.startsWith('/api/') ? path : `/api/v1${path}`)),
   ]);
   return Object.fromEntries(entries) as TestClient;
 }

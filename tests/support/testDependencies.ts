@@ -21,11 +21,18 @@ export interface TestDependencies extends AppDependencies {
   release: () => Promise<void>;
 }
 
+function testServiceUrl(name: string): string {
+  const url = process.env[name];
+  if (!url) throw new Error(`${name} is not set. Run the tests with "npm test", which starts what they need.`);
+  return url;
+}
+
 export function testConfig(storageDir: string, overrides: Partial<Config> = {}): Config {
   const parsed = parseConfig({
     NODE_ENV: 'test',
-    DATABASE_URL: process.env.DATABASE_URL,
-    REDIS_URL: process.env.REDIS_URL,
+    // Names of their own: tests empty the database, which must never be one that somebody works with.
+    DATABASE_URL: testServiceUrl('OVERFOLD_TEST_DATABASE_URL'),
+    REDIS_URL: testServiceUrl('OVERFOLD_TEST_REDIS_URL'),
     SMTP_URL: 'smtp://127.0.0.1:9',
     JWT_SECRET: testJwtSecret,
     // The cheapest there is: the suite hashes often, and the cost has a test of its own.
