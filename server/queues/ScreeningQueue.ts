@@ -1,3 +1,4 @@
+import { setTimeout as delay } from 'node:timers/promises';
 import { Queue } from 'bullmq';
 import { Redis } from 'ioredis';
 import { screenCaptureJobId, screeningQueueName, type ScreenCapturePayload } from '../../shared/jobs/screenCapture.js';
@@ -9,6 +10,9 @@ const triesPerJob = 4;
 const firstBackOffMs = 2_000;
 /** A Redis that takes connections but doesn't answer must not hold up an upload. */
 const commandTimeoutMs = 2_000;
+/** A connection just being made is waited for this long. */
+const connectWaitMs = 500;
+const connectPollMs = 20;
 
 /** States in which BullMQ still intends to run a job. */
 const liveStates = new Set(['waiting', 'active', 'delayed', 'prioritized', 'waiting-children']);
@@ -19,18 +23,84 @@ const liveStates = new Set(['waiting', 'active', 'delayed', 'prioritized', 'wait
  */
 export class ScreeningQueue {
   private readonly connection: Redis;
-  private readonly queue: Queue<ScreenCapturePayload>;
+  private queue: Queue<ScreenCapturePayload> | null = null;
+  private readonly warn: (error: Error) => void;
 
-  constructor(redisUrl: string, logger: Logger, queueName: string = screeningQueueName) {
+  constructor(
+    redisUrl: string,
+    logger: Logger,
+    private readonly queueName: string = screeningQueueName,
+  ) {
+    this.warn = (error) => logger.warn({ err: error.message }, 'queue not reachable');
     this.connection = new Redis(redisUrl, {
       maxRetriesPerRequest: 1,
       enableOfflineQueue: false,
       commandTimeout: commandTimeoutMs,
       retryStrategy: (tries) => Math.min(2_000, 100 * tries),
     });
-    const warn = (error: Error): void => logger.warn({ err: error.message }, 'queue not reachable');
-    this.connection.on('error', warn);
-    this.queue = new Queue(queueName, {
+    this.connection.on('error', this.warn);
+  }
+
+  /** @throws Error when Redis doesn't take the jobs */
+  async add(payloads: ScreenCapturePayload[]): Promise<void> {
+    if (payloads.length === 0) return;
+    const queue = await this.open();
+    await queue.addBulk(
+      payloads.map((data) => ({ name: 'screenCapture', data, opts: { jobId: screenCaptureJobId(data) } })),
+    );
+  }
+
+  /** Whether BullMQ still holds a job that will run, or is running, for this attempt. */
+  async isLive(payload: ScreenCapturePayload): Promise<boolean> {
+    const queue = await this.open();
+    return liveStates.has(await queue.getJobState(screenCaptureJobId(payload)));
+  }
+
+  /** @throws Error when Redis doesn't answer, or would throw jobs away when memory runs short */
+  async check(): Promise<void> {
+    await this.requireReachable();
+    const policy = (await this.connection.config('GET', 'maxmemory-policy')) as string[];
+    if (policy[1] !== undefined && policy[1] !== 'noeviction') {
+      throw new Error(`Redis must keep every key: set maxmemory-policy noeviction (it is ${policy[1]}).`);
+    }
+  }
+
+  /** @throws Error when Redis doesn't answer */
+  async requireReachable(): Promise<void> {
+    const deadlineMs = Date.now() + connectWaitMs;
+    const isConnecting = (): boolean => ['wait', 'connecting', 'connect'].includes(this.connection.status);
+    while (isConnecting() && Date.now() < deadlineMs) await delay(connectPollMs);
+    await this.connection.ping();
+  }
+
+  async counts(): Promise<Record<string, number>> {
+    const queue = await this.open();
+    return queue.getJobCounts('waiting', 'active', 'delayed', 'failed');
+  }
+
+  async close(): Promise<void> {
+    await this.queue?.close();
+    this.connection.disconnect();
+  }
+
+  /**
+   * BullMQ asks Redis about itself once, when its object is made, and an object whose question failed never works again.
+   * So it is made only on a connection that answers, and thrown away when the question fails all the same.
+   */
+  private async open(): Promise<Queue<ScreenCapturePayload>> {
+    await this.requireReachable();
+    const queue = (this.queue ??= this.createQueue());
+    try {
+      await queue.waitUntilReady();
+    } catch (error) {
+      if (this.queue === queue) this.queue = null;
+      throw error;
+    }
+    return queue;
+  }
+
+  private createQueue(): Queue<ScreenCapturePayload> {
+    const queue = new Queue<ScreenCapturePayload>(this.queueName, {
       connection: this.connection,
       skipWaitingForReady: true,
       defaultJobOptions: {
@@ -40,37 +110,7 @@ export class ScreeningQueue {
         removeOnFail: { count: keptJobs },
       },
     });
-    this.queue.on('error', warn);
-  }
-
-  /** @throws Error when Redis doesn't take the jobs */
-  async add(payloads: ScreenCapturePayload[]): Promise<void> {
-    if (payloads.length === 0) return;
-    await this.queue.addBulk(
-      payloads.map((data) => ({ name: 'screenCapture', data, opts: { jobId: screenCaptureJobId(data) } })),
-    );
-  }
-
-  /** Whether BullMQ still holds a job that will run, or is running, for this attempt. */
-  async isLive(payload: ScreenCapturePayload): Promise<boolean> {
-    return liveStates.has(await this.queue.getJobState(screenCaptureJobId(payload)));
-  }
-
-  /** @throws Error when Redis doesn't answer, or would throw jobs away when memory runs short */
-  async check(): Promise<void> {
-    await this.connection.ping();
-    const policy = (await this.connection.config('GET', 'maxmemory-policy')) as string[];
-    if (policy[1] !== undefined && policy[1] !== 'noeviction') {
-      throw new Error(`Redis must keep every key: set maxmemory-policy noeviction (it is ${policy[1]}).`);
-    }
-  }
-
-  counts(): Promise<Record<string, number>> {
-    return this.queue.getJobCounts('waiting', 'active', 'delayed', 'failed');
-  }
-
-  async close(): Promise<void> {
-    await this.queue.close();
-    this.connection.disconnect();
+    queue.on('error', this.warn);
+    return queue;
   }
 }

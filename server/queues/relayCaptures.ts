@@ -19,8 +19,10 @@ async function takeReceived(dataSource: DataSource): Promise<{ captureId: string
  * Brings captures in state `received` to the queue. The row changes first: if the process dies in between, or Redis
  * refuses, the reconciler finds a queued row without a job and puts it back.
  * @returns the number of captures queued
+ * @throws Error when Redis doesn't answer; rows not taken yet stay as they are
  */
 export async function relayCaptures(dataSource: DataSource, queue: ScreeningQueue): Promise<number> {
+  await queue.requireReachable();
   let total = 0;
   for (let taken = await takeReceived(dataSource); taken.length > 0; taken = await takeReceived(dataSource)) {
     await queue.add(taken);

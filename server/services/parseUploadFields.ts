@@ -1,4 +1,4 @@
-import { z } from 'zod';
+import type { z } from 'zod';
 import type { AcquisitionSheet } from '../../shared/schemas/acquisitionSheet.js';
 import { acquisitionByFileSchema, csvLayoutByFileSchema } from '../../shared/schemas/capture.js';
 import { idSchema } from '../../shared/schemas/common.js';
