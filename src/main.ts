@@ -1,0 +1,20 @@
+import '@fontsource/roboto/latin-400.css';
+import '@fontsource/roboto/latin-500.css';
+import '@fontsource/roboto/latin-700.css';
+import '@fontsource/roboto/latin-ext-400.css';
+import '@fontsource/roboto/greek-400.css';
+import { VueQueryPlugin } from '@tanstack/vue-query';
+import { createPinia } from 'pinia';
+import { createApp } from 'vue';
+import App from './App.vue';
+import { createQueryClient } from './plugins/queryClient';
+import { vuetify } from './plugins/vuetify';
+import { createAppRouter } from './router/createAppRouter';
+import './styles/main.css';
+
+const app = createApp(App);
+app.use(createPinia());
+app.use(VueQueryPlugin, { queryClient: createQueryClient() });
+app.use(vuetify);
+app.use(createAppRouter());
+app.mount('#app');
