@@ -37,7 +37,13 @@ export function mirrorAboutPivot(density: Float64Array, resolutionHz: number): M
     const distance = Math.abs(bin - spacing * Math.round(bin / spacing));
     if (distance > 4) runnerUp = Math.max(runnerUp, value);
   });
-  return { pivotHz: spacing * resolutionHz, factor, correlation, runnerUp, imageDb: imageLevelDb(density, Math.round(spacing)) };
+  return {
+    pivotHz: spacing * resolutionHz,
+    factor,
+    correlation,
+    runnerUp,
+    imageDb: imageLevelDb(density, Math.round(spacing)),
+  };
 }
 
 function mirrorCorrelation(detail: Float64Array, pivot: number): number {

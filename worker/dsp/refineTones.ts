@@ -70,7 +70,9 @@ function bestOffset(demodulator: ToneDemodulator, z: Float64Array, centre: numbe
   const span = demodulator.blocks * demodulator.blockFrames;
   const power = (delta: number): number => {
     const a = amplitudeAt(demodulator, z, delta);
-    return a.real * a.real + a.imaginary * a.imaginary;
+    // Explained power, |Σ z·conj(D)|²/Σ|D|²: the amplitude alone would favour offsets at which a block responds less.
+    const length = blockLength(delta, demodulator.blockFrames);
+    return (a.real * a.real + a.imaginary * a.imaginary) * length * length;
   };
   const step = Math.PI / (2 * span);
   const steps = Math.ceil(reach / step);
@@ -93,12 +95,16 @@ function bestOffset(demodulator: ToneDemodulator, z: Float64Array, centre: numbe
   return best;
 }
 
+function blockLength(delta: number, blockFrames: number): number {
+  const half = Math.sin(delta / 2);
+  return Math.abs(half) < 1e-12 ? blockFrames : Math.sin((delta * blockFrames) / 2) / half;
+}
+
 /** Least-squares amplitude of a single tone at the given offset: Σ z·conj(D) / Σ |D|². */
 function amplitudeAt(demodulator: ToneDemodulator, z: Float64Array, delta: number): Complex {
   const { blocks, blockFrames, origin } = demodulator;
   const middle = (blockFrames - 1) / 2 - origin;
-  const half = Math.sin(delta / 2);
-  const length = Math.abs(half) < 1e-12 ? blockFrames : Math.sin((delta * blockFrames) / 2) / half;
+  const length = blockLength(delta, blockFrames);
   let c = Math.cos(delta * middle);
   let s = -Math.sin(delta * middle);
   const stepC = Math.cos(delta * blockFrames);
