@@ -59,7 +59,11 @@ async function main(): Promise<void> {
     process.exit(1);
   });
 
-  const dataSource = await createDataSource(config.DATABASE_URL).initialize();
+  const dataSource = await createDataSource(config.DATABASE_URL)
+    .initialize()
+    .catch((error: unknown) => {
+      throw new Error('The database cannot be reached. Check DATABASE_URL and that PostgreSQL runs.', { cause: error });
+    });
   if (await dataSource.showMigrations()) {
     throw new Error('The database lacks the newest tables. Run: npm run db:migrate');
   }
@@ -84,6 +88,7 @@ async function main(): Promise<void> {
 }
 
 main().catch((error: unknown) => {
-  process.stderr.write(`${error instanceof Error ? error.message : String(error)}\n`);
+  const cause = error instanceof Error && error.cause ? ` (${String(error.cause)})` : '';
+  process.stderr.write(`${error instanceof Error ? error.message : String(error)}${cause}\n`);
   process.exit(1);
 });

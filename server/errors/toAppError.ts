@@ -9,6 +9,8 @@ import { UnsupportedMediaTypeError } from './UnsupportedMediaTypeError.js';
 
 /** PostgreSQL: connection (08), resources (53), operator intervention (57, restart included), lock or statement time-out. */
 const passingStates = /^(08|53|57|40)|^55P03$/;
+/** A character that text or JSON columns can't hold. */
+const unstorableCodes = new Set(['22021', '22P05']);
 const networkCodes = new Set(['ECONNREFUSED', 'ECONNRESET', 'ETIMEDOUT', 'EPIPE', 'ENOTFOUND', 'EAI_AGAIN']);
 const fullCodes = new Set(['ENOSPC', 'EDQUOT']);
 
@@ -44,6 +46,9 @@ export function toAppError(thrown: unknown): AppError {
   const driverError: unknown = thrown instanceof QueryFailedError ? thrown.driverError : thrown;
   const code = driverError instanceof Error ? textOf(driverError, 'code') : undefined;
   if (code && fullCodes.has(code)) return new InsufficientStorageError(undefined, undefined, { cause: thrown });
+  if (code && unstorableCodes.has(code)) {
+    return new InvalidInputError('BAD_CHARACTER', 'A text holds a character that cannot be stored.', { cause: thrown });
+  }
   if (
     (code && (networkCodes.has(code) || passingStates.test(code))) ||
     (driverError instanceof Error && isConnectionFailure(driverError))

@@ -14,11 +14,17 @@ function emailOf(req: Request): string {
   return typeof email === 'string' ? email.trim().toLowerCase().slice(0, 254) : '';
 }
 
-function limit(options: { max: number; key: (req: Request) => string; failuresOnly?: boolean }): RequestHandler {
+function limit(options: {
+  max: number;
+  /** Requests with an empty key are not counted. */
+  key: (req: Request) => string;
+  failuresOnly?: boolean;
+}): RequestHandler {
   return rateLimit({
     windowMs,
     limit: options.max,
     keyGenerator: options.key,
+    skip: (req) => options.key(req) === '',
     skipSuccessfulRequests: options.failuresOnly ?? false,
     standardHeaders: false,
     legacyHeaders: false,

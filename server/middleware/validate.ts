@@ -26,9 +26,24 @@ export function describeIssues(issues: readonly z.core.$ZodIssue[], prefix: stri
   });
 }
 
+const loneSurrogate = /[\ud800-\udfff]/u;
+/** NUL, or half of a pair: PostgreSQL stores neither. */
+const isUnstorable = (text: string): boolean => text.includes('\0') || loneSurrogate.test(text);
+
+function describeUnstorable(value: unknown, path: string): ErrorDetail[] {
+  if (typeof value === 'string') {
+    return isUnstorable(value) ? [{ path, message: 'This holds a character that cannot be stored.' }] : [];
+  }
+  if (typeof value !== 'object' || value === null) return [];
+  return Object.entries(value).flatMap(([key, inner]) => [
+    ...(isUnstorable(key) ? [{ path, message: 'A name here holds a character that cannot be stored.' }] : []),
+    ...describeUnstorable(inner, `${path}.${key}`),
+  ]);
+}
+
 function parsePart(schema: z.ZodType | undefined, value: unknown, prefix: string, details: ErrorDetail[]): unknown {
   const parsed = (schema ?? nothing).safeParse(value);
-  if (!parsed.success) details.push(...describeIssues(parsed.error.issues, prefix));
+  details.push(...(parsed.success ? describeUnstorable(value, prefix) : describeIssues(parsed.error.issues, prefix)));
   return parsed.data;
 }
 
@@ -55,7 +70,8 @@ export function validateBody(route: Pick<Route, 'body' | 'bodyType'>, req: Reque
   const body: unknown = req.body;
   const hasContent = req.headers['transfer-encoding'] !== undefined || Number(req.headers['content-length'] ?? 0) > 0;
   if (hasContent && req.is('application/json') === false) throw new UnsupportedMediaTypeError();
-  const parsed = (route.body ?? noBody).safeParse(body);
-  if (parsed.success) return route.body ? parsed.data : undefined;
-  throw new InvalidInputError(undefined, undefined, { details: describeIssues(parsed.error.issues, 'body') });
+  const details: ErrorDetail[] = [];
+  const parsed = parsePart(route.body ?? noBody, body, 'body', details);
+  if (details.length > 0) throw new InvalidInputError(undefined, undefined, { details });
+  return route.body ? parsed : undefined;
 }

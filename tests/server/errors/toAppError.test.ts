@@ -28,6 +28,7 @@ describe('toAppError', () => {
       415,
       'UNSUPPORTED_MEDIA_TYPE',
     ],
+    ['a character that the database refuses', failedQuery('22021'), 400, 'BAD_CHARACTER'],
     ['a broken address', withFields('x', { status: 400 }), 400, 'BAD_REQUEST'],
     ['a wrong query of ours', failedQuery('42703'), 500, 'INTERNAL'],
     ['a programming error', new TypeError('x is undefined'), 500, 'INTERNAL'],

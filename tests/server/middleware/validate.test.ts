@@ -50,6 +50,11 @@ describe('validation of a request', () => {
     });
   });
 
+  it('takes characters beyond the basic plane', async () => {
+    const answer = await supertest(echoApp()).post(path).send({ name: 'a🔧', size: 3 });
+    expect(answer.body.body).toEqual({ name: 'a🔧', size: 3 });
+  });
+
   it('tells every problem of the body with its path', async () => {
     const answer = await supertest(echoApp()).post(path).send({ name: 'too long', size: -1, extra: 1, when: 'soon' });
     expect(answer.status).toBe(400);
@@ -89,6 +94,8 @@ describe('validation of a request', () => {
     ['a bare text', '"name"', 'BAD_JSON', 400],
     ['a list', '[]', 'INVALID_INPUT', 400],
     ['__proto__ as a name', '{"name":"x","size":3,"__proto__":{"isAdmin":true}}', 'INVALID_INPUT', 400],
+    ['a NUL character', '{"name":"a\\u0000b","size":1}', 'INVALID_INPUT', 400],
+    ['half a character', '{"name":"a\\ud800","size":1}', 'INVALID_INPUT', 400],
     ['a number that JSON cannot hold', '{"name":"x","size":1e999}', 'INVALID_INPUT', 400],
     ['300 kB', JSON.stringify({ name: 'x'.repeat(300_000), size: 1 }), 'BODY_TOO_LARGE', 413],
   ])('refuses %s', async (_name, text, code, status) => {
