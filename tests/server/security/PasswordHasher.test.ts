@@ -29,6 +29,26 @@ describe('PasswordHasher', () => {
     expect(await hasher.matches('no account has this password', null)).toBe(false);
   });
 
+  it('takes as long for an unknown user as for a wrong password', async () => {
+    const slower = new PasswordHasher(8);
+    const hash = await slower.hash('amber-otter-ladder');
+    const timesMs: Record<'known' | 'unknown', number[]> = { known: [], unknown: [] };
+    const measure = async (kind: 'known' | 'unknown'): Promise<void> => {
+      const startedMs = performance.now();
+      await slower.matches('wrong-password', kind === 'known' ? hash : null);
+      timesMs[kind].push(performance.now() - startedMs);
+    };
+    // Alternating, so that other work on the machine hits both alike.
+    for (let i = 0; i < 30; i++) {
+      await measure('known');
+      await measure('unknown');
+    }
+    const median = (values: number[]): number => [...values].sort((a, b) => a - b)[values.length / 2] ?? NaN;
+    const ratio = median(timesMs.unknown) / median(timesMs.known);
+    expect(ratio).toBeGreaterThan(0.8);
+    expect(ratio).toBeLessThan(1.2);
+  });
+
   it('stores a hash of the cost that it was given', async () => {
     expect(bcrypt.getRounds(await new PasswordHasher(6).hash('amber-otter-ladder'))).toBe(6);
   });
