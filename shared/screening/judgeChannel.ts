@@ -34,14 +34,6 @@ export function judgeChannel(
   const bandEdge = bandEdgeFigures(record, thresholds, band, sheet.noiseFloorDb);
   const bound = isIrregular ? null : contaminationBound(record, thresholds.confidence, sheet);
   const findings: Finding[] = [...tones.findings, ...integrity];
-  if (bound !== null && features !== null) {
-    const isDamaged = integrity.some(
-      ({ kind, severity }) => severity === 'unproven' && kind !== 'rateDisagrees' && kind !== 'tooShort',
-    );
-    findings.push(
-      ...judgeEdge(record, thresholds, { bandEdge, bound, features, foldConfidence: score?.score ?? 0, isDamaged }),
-    );
-  }
   let clearToHz: number | null = null;
   if (bound !== null && record.profile !== null && rateHz !== null) {
     const stopsHz = tones.tones
@@ -51,6 +43,22 @@ export function judgeChannel(
     const result = clearToFrequency(record.profile, bound, thresholds.requiredProtectionDb, options);
     clearToHz = result.clearToHz;
     findings.push(...clearToFindings(result, thresholds, band, bound.assumption, score?.score ?? 0));
+  }
+  if (bound !== null && features !== null) {
+    const isProtected = clearToHz !== null && clearToHz >= band[1];
+    const isDamaged = integrity.some(
+      ({ kind, severity }) => severity === 'unproven' && kind !== 'rateDisagrees' && kind !== 'tooShort',
+    );
+    findings.push(
+      ...judgeEdge(record, thresholds, {
+        bandEdge,
+        bound,
+        features,
+        foldConfidence: score?.score ?? 0,
+        isDamaged,
+        isProtected,
+      }),
+    );
   }
   const order = { fold: 0, unproven: 1, limit: 2, note: 3 } as const;
   findings.sort((a, b) => order[a.severity] - order[b.severity] || b.confidence - a.confidence);

@@ -51,6 +51,7 @@ export function judgeEdge(
     features: FoldFeatures;
     foldConfidence: number;
     isDamaged: boolean;
+    isProtected: boolean;
   },
 ): Finding[] {
   const { edge, sampleRateHz } = record;
@@ -78,7 +79,8 @@ export function judgeEdge(
     const sigmas = follows.slope / follows.slopeError;
     const isSignificant =
       sigmas > normalQuantile(Math.min(0.9999, thresholds.confidence)) && follows.inbandRangeDb >= leastRangeDb;
-    if (isSignificant && foldConfidence >= thresholds.confidence) {
+    const isSubstantial = guardShareDb !== null && guardShareDb > thresholds.maxGuardShareDb;
+    if (isSignificant && isSubstantial && foldConfidence >= thresholds.confidence) {
       findings.push({
         kind: 'edgeFollowsSource',
         severity: 'fold',
@@ -107,7 +109,8 @@ export function judgeEdge(
   ) {
     findings.push({
       kind: 'bandEdgeUnprotected',
-      severity: 'limit',
+      // Energy in the guard band alone does not limit what the bound protects; a missing skirt does.
+      severity: given.isProtected && skirtDb >= thresholds.minSkirtDb ? 'note' : 'limit',
       confidence: foldConfidence,
       ...place,
       strengthDb: guardShareDb,
