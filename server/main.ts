@@ -2,7 +2,7 @@ import { createServer, type Server } from 'node:http';
 import path from 'node:path';
 import { createApp } from './app.js';
 import { parseConfig, type Config } from './config/config.js';
-import { createDataSource } from './createDataSource.js';
+import { connectDatabase } from './connectDatabase.js';
 import { createLogger, type Logger } from './logging/createLogger.js';
 import { ScreeningQueue } from './queues/ScreeningQueue.js';
 import { readVersion } from './readVersion.js';
@@ -59,11 +59,7 @@ async function main(): Promise<void> {
     process.exit(1);
   });
 
-  const dataSource = await createDataSource(config.DATABASE_URL)
-    .initialize()
-    .catch((error: unknown) => {
-      throw new Error('The database cannot be reached. Check DATABASE_URL and that PostgreSQL runs.', { cause: error });
-    });
+  const dataSource = await connectDatabase(config);
   if (await dataSource.showMigrations()) {
     throw new Error('The database lacks the newest tables. Run: npm run db:migrate');
   }
@@ -88,7 +84,6 @@ async function main(): Promise<void> {
 }
 
 main().catch((error: unknown) => {
-  const cause = error instanceof Error && error.cause ? ` (${String(error.cause)})` : '';
-  process.stderr.write(`${error instanceof Error ? error.message : String(error)}${cause}\n`);
+  process.stderr.write(`${error instanceof Error ? error.message : String(error)}\n`);
   process.exit(1);
 });

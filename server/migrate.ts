@@ -1,11 +1,9 @@
 import { parseConfig } from './config/config.js';
-import { createDataSource } from './createDataSource.js';
+import { connectDatabase } from './connectDatabase.js';
 
 /** `npm run db:migrate`: brings the database to the present schema. */
 async function migrate(): Promise<void> {
-  const { DATABASE_URL } = parseConfig(process.env);
-  const dataSource = createDataSource(DATABASE_URL, { poolSize: 2 });
-  await dataSource.initialize();
+  const dataSource = await connectDatabase(parseConfig(process.env), { poolSize: 2 });
   try {
     const ran = await dataSource.runMigrations({ transaction: 'each' });
     console.log(ran.length === 0 ? 'The database is up to date.' : `Ran: ${ran.map(({ name }) => name).join(', ')}`);

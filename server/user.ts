@@ -2,7 +2,7 @@ import { parseArgs } from 'node:util';
 import { z } from 'zod';
 import { emailSchema, nameSchema } from '../shared/schemas/common.js';
 import { parseConfig } from './config/config.js';
-import { createDataSource } from './createDataSource.js';
+import { connectDatabase } from './connectDatabase.js';
 import { UserCommandService } from './services/UserCommandService.js';
 
 const usage = `Usage:
@@ -11,17 +11,27 @@ const usage = `Usage:
   npm run user -- list
   npm run user -- deactivate --email ADDRESS`;
 
-const argumentsSchema = z.discriminatedUnion('command', [
-  z.strictObject({
-    command: z.literal('add'),
-    email: emailSchema,
-    name: nameSchema,
-    admin: z.boolean().default(false),
-    'password-stdin': z.boolean().default(false),
-  }),
-  z.strictObject({ command: z.literal('list') }),
-  z.strictObject({ command: z.literal('deactivate'), email: emailSchema }),
-]);
+const argumentsSchema = z.discriminatedUnion(
+  'command',
+  [
+    z.strictObject({
+      command: z.literal('add'),
+      email: emailSchema,
+      name: nameSchema,
+      admin: z.boolean().default(false),
+      'password-stdin': z.boolean().default(false),
+    }),
+    z.strictObject({ command: z.literal('list') }),
+    z.strictObject({ command: z.literal('deactivate'), email: emailSchema }),
+  ],
+  { error: 'Say what to do: add, list or deactivate.' },
+);
+/** The command was called wrongly: the usage helps. */
+class UsageError extends Error {}
+
+const isParseArgsError = (error: unknown): boolean =>
+  error instanceof Error && 'code' in error && String(error.code).startsWith('ERR_PARSE_ARGS');
+
 type UserArguments = z.infer<typeof argumentsSchema>;
 
 function readArguments(): UserArguments {
@@ -34,10 +44,10 @@ function readArguments(): UserArguments {
       'password-stdin': { type: 'boolean' },
     },
   });
-  if (positionals.length > 1) throw new Error(`Too many words: ${positionals.slice(1).join(' ')}`);
+  if (positionals.length > 1) throw new UsageError(`Too many words: ${positionals.slice(1).join(' ')}`);
   const parsed = argumentsSchema.safeParse({ command: positionals[0], ...values });
   if (parsed.success) return parsed.data;
-  throw new Error(parsed.error.issues.map(({ path, message }) => `${path.join('.')}: ${message}`).join('\n'));
+  throw new UsageError(parsed.error.issues.map(({ path, message }) => `${path.join('.')}: ${message}`).join('\n'));
 }
 
 async function readPassword(): Promise<string> {
@@ -68,7 +78,7 @@ async function run(service: UserCommandService, args: UserArguments): Promise<vo
 async function main(): Promise<void> {
   const args = readArguments();
   const config = parseConfig(process.env);
-  const dataSource = await createDataSource(config.DATABASE_URL, { poolSize: 2 }).initialize();
+  const dataSource = await connectDatabase(config, { poolSize: 2 });
   try {
     await run(new UserCommandService({ config, dataSource, now: () => new Date() }), args);
   } finally {
@@ -78,6 +88,6 @@ async function main(): Promise<void> {
 
 main().catch((error: unknown) => {
   console.error(error instanceof Error ? error.message : error);
-  console.error(`\n${usage}`);
+  if (error instanceof UsageError || isParseArgsError(error)) console.error(`\n${usage}`);
   process.exitCode = 1;
 });

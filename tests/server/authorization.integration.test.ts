@@ -180,6 +180,24 @@ describe('things of another project', () => {
   });
 });
 
+describe('a change made with the sign-in cookie', () => {
+  const writes = authorizationMatrix.filter(
+    ({ method, expected }) => method !== 'get' && expected.nobody === 401 && expected.admin !== 401,
+  );
+
+  it.each(writes.map((row) => [nameOf(row), row] as const))(
+    '%s needs the header that pages of other sites cannot send',
+    async (_name, row) => {
+      const { token } = await app.openSession(users.admin);
+      const withCookie = (): Test =>
+        send(app.anonymous, row).set('Cookie', `overfold_access=${token}`).set('Origin', 'https://evil.example');
+      expect(errorOf(await withCookie())).toEqual({ status: 403, code: 'CLIENT_HEADER_MISSING' });
+      const allowed = await withCookie().set('X-Overfold-Client', 'web');
+      expect(allowed.status).toBe(row.expected.admin);
+    },
+  );
+});
+
 describe('what has ended', () => {
   const protectedRows = authorizationMatrix.filter(({ expected }) => expected.nobody === 401 && expected.admin !== 401);
 
