@@ -13,6 +13,7 @@ export function createDataSource(databaseUrl: string, options: { poolSize?: numb
     namingStrategy: new SnakeNamingStrategy(),
     synchronize: false,
     uuidExtension: 'pgcrypto',
+    installExtensions: false,
     poolSize: options.poolSize ?? 10,
     connectTimeoutMS: 5_000,
     extra: { statement_timeout: 30_000, idle_in_transaction_session_timeout: 60_000 },
