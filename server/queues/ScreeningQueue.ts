@@ -88,7 +88,7 @@ export class ScreeningQueue {
    * So it is made only on a connection that answers, and thrown away when the question fails all the same.
    */
   private async open(): Promise<Queue<ScreenCapturePayload>> {
-    await this.requireReachable();
+    if (this.connection.status !== 'ready') await this.requireReachable();
     const queue = (this.queue ??= this.createQueue());
     try {
       await queue.waitUntilReady();

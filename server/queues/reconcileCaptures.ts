@@ -7,10 +7,32 @@ const graceS = 5;
 /** Workers lost on one capture before it is given up. */
 const maxFaults = 4;
 
+/** Jobs asked about at once. */
+const chunkSize = 100;
+
 interface OpenRow {
   id: string;
   attempt: number;
-  fault_count: number;
+  state: 'queued' | 'screening';
+  faultCount: number;
+}
+
+/** Rows that should have a live job and have none. */
+async function findLost(dataSource: DataSource, queue: ScreeningQueue): Promise<OpenRow[]> {
+  const open = await dataSource.query<OpenRow[]>(
+    `SELECT id, attempt, state, fault_count AS "faultCount" FROM captures
+      WHERE state IN ('queued', 'screening')
+        AND greatest(queued_at, started_at) < now() - make_interval(secs => $1)
+      ORDER BY queued_at LIMIT 2000`,
+    [graceS],
+  );
+  const lost: OpenRow[] = [];
+  for (let start = 0; start < open.length; start += chunkSize) {
+    const chunk = open.slice(start, start + chunkSize);
+    const isLive = await Promise.all(chunk.map(({ id, attempt }) => queue.isLive({ captureId: id, attempt })));
+    lost.push(...chunk.filter((_row, index) => !isLive[index]));
+  }
+  return lost;
 }
 
 /**
@@ -20,18 +42,10 @@ interface OpenRow {
  * @returns the number of captures put right
  */
 export async function reconcileCaptures(dataSource: DataSource, queue: ScreeningQueue): Promise<number> {
-  const open = (await dataSource.query(
-    `SELECT id, attempt, fault_count FROM captures
-      WHERE state IN ('queued', 'screening')
-        AND greatest(queued_at, started_at) < now() - make_interval(secs => $1)
-      ORDER BY queued_at LIMIT 2000`,
-    [graceS],
-  )) as OpenRow[];
   let changed = 0;
-  for (const { id, attempt, fault_count: faultCount } of open) {
+  for (const { id, attempt, state, faultCount } of await findLost(dataSource, queue)) {
     const payload = { captureId: id, attempt };
-    if (await queue.isLive(payload)) continue;
-    if (faultCount + 1 > maxFaults) {
+    if (state === 'screening' && faultCount >= maxFaults) {
       const isFailed = await failCapture(dataSource, payload, {
         code: 'WORKER_DIED',
         message:
