@@ -40,24 +40,35 @@ export function showsImages({ edge }: MeasurementRecord): boolean {
   return mirror.correlation > 0.95 && mirror.correlation - mirror.runnerUp > 0.15 && mirror.imageDb < 0;
 }
 
-const floorBands = 10;
+const floorBands = 8;
+const floorFrom = 0.7;
+const floorTo = 0.97;
+const floorToleranceDb = 0.8;
 
-/** 1 when ten bands between 0.5 and 0.97·fs/2 differ by no more than chance explains and the edge is steady over time. */
+/**
+ * 1 when the lower quartiles of the median density in eight bands between 0.7 and 0.97·fs/2 differ by no more than chance
+ * explains and the edge is steady over time. Medians and quartiles look past tones, also past those that move.
+ */
 function floorLikeness(profile: ProfileMeasurement, kurtosis: number): number {
-  const cells = profile.tonelessDb.length;
-  const width = 0.47 / floorBands;
+  const cells = profile.medianDb.length;
+  const width = (floorTo - floorFrom) / floorBands;
   const levels = Array.from({ length: floorBands }, (_, band) => {
-    const from = Math.floor((0.5 + band * width) * cells);
-    const to = Math.max(from + 1, Math.floor((0.5 + (band + 1) * width) * cells));
-    const values = profile.tonelessDb.slice(from, to);
-    return decibels(values.reduce((sum, level) => sum + 10 ** (level / 10), 0) / values.length);
+    const from = Math.floor((floorFrom + band * width) * cells);
+    const to = Math.max(from + 1, Math.floor((floorFrom + (band + 1) * width) * cells));
+    return lowerQuartile(profile.medianDb.slice(from, to));
   });
   const binsPerBand = Math.max(1, (width * cells * profile.cellHz) / profile.resolutionHz);
-  const chanceDb = 4.34 / Math.sqrt(binsPerBand * profile.effectiveSegments);
-  if (chanceDb > 0.6) return 0;
+  const chanceDb = (1.6 * 4.34) / Math.sqrt(binsPerBand * profile.effectiveSegments);
+  if (chanceDb > 0.8) return 0;
   const mean = levels.reduce((sum, level) => sum + level, 0) / floorBands;
-  const spread = Math.sqrt(
-    Math.max(0, levels.reduce((sum, level) => sum + (level - mean) ** 2, 0) / floorBands - chanceDb ** 2),
-  );
-  return Math.exp(-((spread / 0.5) ** 2)) * Math.exp(-((Math.max(0, kurtosis - 1.3) / 0.5) ** 2));
+  const variance = levels.reduce((sum, level) => sum + (level - mean) ** 2, 0) / floorBands - chanceDb ** 2;
+  const flatness = Math.exp(-Math.max(0, variance) / floorToleranceDb ** 2);
+  return flatness * Math.exp(-((Math.max(0, kurtosis - 1.3) / 0.5) ** 2));
+}
+
+function lowerQuartile(levels: number[]): number {
+  const sorted = [...levels].sort((a, b) => a - b);
+  const place = 0.25 * (sorted.length - 1);
+  const below = sorted[Math.floor(place)] ?? 0;
+  return below + ((sorted[Math.ceil(place)] ?? below) - below) * (place - Math.floor(place));
 }
