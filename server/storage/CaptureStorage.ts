@@ -9,6 +9,8 @@ export interface CaptureStorage {
   withLocalFile<T>(key: string, use: (filePath: string) => Promise<T>): Promise<T>;
   /** No error when there is no such file. */
   remove(key: string): Promise<void>;
+  /** Keys of files last changed before `limit`. */
+  listOlderThan(limit: Date): AsyncIterable<string>;
   /** @throws Error when the store can't be written */
   check(): Promise<void>;
   /** Folder for uploads in progress, in the same file system as a local store. */

@@ -1,9 +1,10 @@
 import { randomUUID } from 'node:crypto';
 import { createReadStream } from 'node:fs';
-import { access, mkdir, open, rename, rm, writeFile } from 'node:fs/promises';
+import { access, mkdir, open, readdir, rename, rm, stat, writeFile } from 'node:fs/promises';
 import { dirname, join, resolve, sep } from 'node:path';
 import type { Readable } from 'node:stream';
 import type { CaptureStorage } from './CaptureStorage.js';
+import { isStorageKey } from './newStorageKey.js';
 import { StoredFileMissingError } from './StoredFileMissingError.js';
 
 async function syncToDisk(path: string): Promise<void> {
@@ -45,6 +46,19 @@ export class LocalCaptureStorage implements CaptureStorage {
 
   async remove(key: string): Promise<void> {
     await rm(this.pathOf(key), { force: true });
+  }
+
+  async *listOlderThan(limit: Date): AsyncIterable<string> {
+    await mkdir(this.rootDir, { recursive: true });
+    for (const folder of await readdir(this.rootDir, { withFileTypes: true })) {
+      if (!folder.isDirectory()) continue;
+      for (const name of await readdir(join(this.rootDir, folder.name))) {
+        const key = `${folder.name}/${name}`;
+        if (!isStorageKey(key)) continue;
+        const { ctime } = await stat(this.pathOf(key));
+        if (ctime < limit) yield key;
+      }
+    }
   }
 
   async check(): Promise<void> {

@@ -5,9 +5,16 @@ import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import type { Readable } from 'node:stream';
 import { pipeline } from 'node:stream/promises';
-import { DeleteObjectCommand, GetObjectCommand, HeadBucketCommand, S3Client } from '@aws-sdk/client-s3';
+import {
+  DeleteObjectCommand,
+  GetObjectCommand,
+  HeadBucketCommand,
+  paginateListObjectsV2,
+  S3Client,
+} from '@aws-sdk/client-s3';
 import { Upload } from '@aws-sdk/lib-storage';
 import type { CaptureStorage } from './CaptureStorage.js';
+import { isStorageKey } from './newStorageKey.js';
 import { StoredFileMissingError } from './StoredFileMissingError.js';
 
 export interface S3Settings {
@@ -69,6 +76,14 @@ export class S3CaptureStorage implements CaptureStorage {
 
   async remove(key: string): Promise<void> {
     await this.client.send(new DeleteObjectCommand({ Bucket: this.bucket, Key: key }));
+  }
+
+  async *listOlderThan(limit: Date): AsyncIterable<string> {
+    for await (const page of paginateListObjectsV2({ client: this.client }, { Bucket: this.bucket })) {
+      for (const { Key, LastModified } of page.Contents ?? []) {
+        if (Key && LastModified && isStorageKey(Key) && LastModified < limit) yield Key;
+      }
+    }
   }
 
   async check(): Promise<void> {
