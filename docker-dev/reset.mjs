@@ -1,6 +1,7 @@
 // npm run reset -- --yes: deletes the installation in this folder with all its data.
 import { existsSync, rmSync } from 'node:fs';
-import { readRunning } from './services/runFile.mjs';
+import { removePostgresData } from './services/postgres.mjs';
+import { readChildren, readRunning } from './services/runFile.mjs';
 import { fail, say } from './services/say.mjs';
 import { readSettings } from './services/settings.mjs';
 
@@ -10,9 +11,12 @@ if (!process.argv.includes('--yes')) {
     `this deletes ${stateDir} with all projects, captures, decisions and mails. If that is meant: npm run reset -- --yes`,
   );
 }
-if (readRunning(stateDir)) fail('the installation is running. Stop it first: npm run stop');
+if (readRunning(stateDir) || readChildren(stateDir).length > 0) {
+  fail('the installation is running. Stop it first: npm run stop');
+}
 if (!existsSync(stateDir)) say('there is nothing to delete');
 else {
+  removePostgresData(stateDir);
   rmSync(stateDir, { recursive: true });
   say(`deleted ${stateDir}`);
 }

@@ -6,7 +6,7 @@ import { ensureDebianPackages } from './services/debianPackages.mjs';
 import { ensureNpmPackages } from './services/npmPackages.mjs';
 import { requireFreePort } from './services/ports.mjs';
 import { Processes } from './services/Processes.mjs';
-import { clearRunning, readRunning, writeRunning } from './services/runFile.mjs';
+import { addChild, clearRunning, readRunning, writeRunning } from './services/runFile.mjs';
 import { fail, say } from './services/say.mjs';
 import { appEnvironment, projectDir, readSettings } from './services/settings.mjs';
 
@@ -61,6 +61,8 @@ export async function runInstallation(launch, { extraPorts = () => [] } = {}) {
     if (settings) clearRunning(settings.stateDir);
     process.exit(exitCode);
   };
+  // A closed terminal takes the output with it; stopping must go on all the same.
+  for (const stream of [process.stdout, process.stderr]) stream.on('error', () => undefined);
   for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP']) {
     process.on(signal, () => {
       if (!isStopping) say('stopping');
@@ -83,6 +85,7 @@ export async function runInstallation(launch, { extraPorts = () => [] } = {}) {
     services = await startBackgroundServices(settings);
     processes = new Processes({
       logDir: join(settings.stateDir, 'logs'),
+      onStart: (pid) => addChild(settings.stateDir, pid),
       onUnexpectedExit: (name, code, logFile) => {
         process.stderr.write(`overfold: ${name} ended by itself (code ${code}); its log is ${logFile}\n`);
         void stopAll(1);

@@ -6,14 +6,15 @@ import { projectDir } from './settings.mjs';
 
 const graceMs = 15_000;
 
-/** The app's processes, each in a group of its own, with a log file each; stopped last one first. */
+/** The app's processes, each in a group of its own, with a log file each; stopped together. */
 export class Processes {
   #running = [];
   #isStopping = false;
 
-  constructor({ logDir, onUnexpectedExit }) {
+  constructor({ logDir, onStart, onUnexpectedExit }) {
     mkdirSync(logDir, { recursive: true });
     this.logDir = logDir;
+    this.onStart = onStart;
     this.onUnexpectedExit = onUnexpectedExit;
   }
 
@@ -24,27 +25,33 @@ export class Processes {
       stream.pipe(log, { end: false });
       if (isShown) stream.pipe(process.stdout, { end: false });
     }
-    const exited = new Promise((resolve) => child.once('exit', resolve));
-    child.once('exit', (code) => {
+    const exited = new Promise((resolve) => {
+      child.once('exit', resolve);
+      child.once('error', resolve);
+    });
+    void exited.then((code) => {
       if (!this.#isStopping) this.onUnexpectedExit(name, code, join(this.logDir, `${name}.log`));
     });
+    if (child.pid) this.onStart(child.pid);
     this.#running.push({ child, exited });
     return child;
   }
 
   async stop() {
     this.#isStopping = true;
-    for (const { child, exited } of this.#running.reverse()) {
-      if (child.exitCode !== null || child.signalCode !== null) continue;
-      signalGroup(child.pid, 'SIGTERM');
-      const isGone = await Promise.race([exited.then(() => true), pause(graceMs, false, { ref: false })]);
-      if (!isGone) signalGroup(child.pid, 'SIGKILL');
-    }
+    await Promise.all(
+      this.#running.map(async ({ child, exited }) => {
+        if (child.exitCode !== null || child.signalCode !== null) return;
+        signalGroup(child.pid, 'SIGTERM');
+        const isGone = await Promise.race([exited.then(() => true), pause(graceMs, false, { ref: false })]);
+        if (!isGone) signalGroup(child.pid, 'SIGKILL');
+      }),
+    );
     this.#running = [];
   }
 }
 
-function signalGroup(pid, signal) {
+export function signalGroup(pid, signal) {
   try {
     process.kill(-pid, signal);
   } catch (error) {

@@ -1,6 +1,6 @@
 import { mkdirSync } from 'node:fs';
 import { join } from 'node:path';
-import { ensureDatabase, startPostgres } from './postgres.mjs';
+import { ensureDatabase, removePostgresData, startPostgres } from './postgres.mjs';
 import { startRedis } from './redis.mjs';
 
 /** Starts the private PostgreSQL and Redis of a state folder; `stop` ends both. */
@@ -12,7 +12,7 @@ export async function startBackgroundServices({
   database = 'overfold',
 }) {
   mkdirSync(stateDir, { recursive: true });
-  const postgres = startPostgres({ dataDir: join(stateDir, 'postgres'), port: postgresPort, isThrowAway });
+  const postgres = startPostgres({ stateDir, port: postgresPort, isThrowAway });
   try {
     ensureDatabase({ port: postgresPort, name: database });
     const redis = await startRedis({ dataDir: join(stateDir, 'redis'), port: redisPort });
@@ -20,6 +20,7 @@ export async function startBackgroundServices({
       stop: async () => {
         await redis.stop();
         postgres.stop(isThrowAway ? 'immediate' : 'fast');
+        if (isThrowAway) removePostgresData(stateDir);
       },
     };
   } catch (error) {

@@ -1,7 +1,8 @@
 import { spawnSync } from 'node:child_process';
-import { chownSync, existsSync, mkdirSync, readFileSync, rmSync } from 'node:fs';
-import { dirname, join } from 'node:path';
+import { existsSync, readFileSync, rmSync } from 'node:fs';
+import { join } from 'node:path';
 import { findPostgresBin } from './debianPackages.mjs';
+import { findDataDir, prepareDataDir } from './postgresDataDir.mjs';
 
 const superuser = 'overfold';
 
@@ -9,7 +10,7 @@ const superuser = 'overfold';
 function runAsServerUser(program, args) {
   const isRoot = process.getuid?.() === 0;
   const [command, ...rest] = isRoot ? ['runuser', '-u', 'postgres', '--', program, ...args] : [program, ...args];
-  // Without stdio ignored the started server would hold the pipe open for ever.
+  // Standard output ignored: the started server would hold a pipe open for ever.
   return spawnSync(command, rest, {
     cwd: '/',
     stdio: ['ignore', 'ignore', 'pipe'],
@@ -18,68 +19,42 @@ function runAsServerUser(program, args) {
   });
 }
 
-function idsOf(user) {
-  const line = readFileSync('/etc/passwd', 'utf8')
-    .split('\n')
-    .find((entry) => entry.startsWith(`${user}:`));
-  if (!line) throw new Error(`The user ${user} of the package postgresql is missing. Reinstall postgresql.`);
-  const [, , uid, gid] = line.split(':');
-  return { uid: Number(uid), gid: Number(gid) };
-}
-
-/** Makes the data folder so that the server's user can reach and own it. */
-function prepareDataDir(dataDir) {
-  mkdirSync(dataDir, { recursive: true, mode: 0o700 });
-  if (process.getuid?.() !== 0) return;
-  const { uid, gid } = idsOf('postgres');
-  chownSync(dataDir, uid, gid);
-  if (runAsServerUser('/usr/bin/test', ['-w', dataDir]).status !== 0) {
-    throw new Error(
-      `PostgreSQL's user "postgres" can't enter ${dirname(dataDir)}. Move the project to a folder that others may enter (for instance below /opt or /srv), or run the command as an ordinary user.`,
-    );
-  }
-}
-
 function check(result, what, logFile) {
   if (result.status === 0) return;
   const log = logFile && existsSync(logFile) ? readFileSync(logFile, 'utf8').split('\n').slice(-6).join('\n') : '';
-  throw new Error(`${what} failed: ${(result.stderr ?? '').trim()}\n${log}`.trim());
+  throw new Error(`${what} failed: ${(result.stderr ?? result.error?.message ?? '').trim()}\n${log}`.trim());
+}
+
+function makeCluster(dataDir) {
+  const options = ['-U', superuser, '-A', 'trust', '-E', 'UTF8', '--locale=C.UTF-8', '--no-sync'];
+  const made = runAsServerUser(join(findPostgresBin(), 'initdb'), ['-D', dataDir, ...options]);
+  if (made.status !== 0) rmSync(dataDir, { recursive: true, force: true });
+  check(made, 'Making the PostgreSQL cluster');
+}
+
+/** Program of the very version that made the data: another one refuses them. */
+function findControl(dataDir) {
+  const version = readFileSync(join(dataDir, 'PG_VERSION'), 'utf8').trim();
+  const control = `/usr/lib/postgresql/${version}/bin/pg_ctl`;
+  if (existsSync(control)) return control;
+  throw new Error(
+    `The data in ${dataDir} were made by PostgreSQL ${version}, which is no longer installed. Install postgresql-${version}, or start afresh with: npm run reset -- --yes`,
+  );
 }
 
 /** Options that trade safety for speed; for tests only. */
 const throwAwayOptions = '-c fsync=off -c synchronous_commit=off -c full_page_writes=off';
 
 /**
- * Starts a private cluster on loopback, made on first use. `trust` is for a cluster only this machine can reach.
+ * Starts the private cluster of a state folder on loopback, made on first use. `trust` is for a cluster that only this
+ * machine can reach.
  * @returns stop function; `immediate` ends without a checkpoint
  */
-export function startPostgres({ dataDir, port, isThrowAway = false }) {
-  const bin = findPostgresBin();
+export function startPostgres({ stateDir, port, isThrowAway = false }) {
+  const dataDir = prepareDataDir(stateDir);
   const logFile = join(dataDir, 'server.log');
-  prepareDataDir(dataDir);
-  if (!existsSync(join(dataDir, 'PG_VERSION'))) {
-    const made = runAsServerUser(join(bin, 'initdb'), [
-      '-D',
-      dataDir,
-      '-U',
-      superuser,
-      '-A',
-      'trust',
-      '-E',
-      'UTF8',
-      '--locale=C.UTF-8',
-      '--no-sync',
-    ]);
-    if (made.status !== 0) rmSync(dataDir, { recursive: true, force: true });
-    check(made, 'Making the PostgreSQL cluster');
-  }
-  const version = readFileSync(join(dataDir, 'PG_VERSION'), 'utf8').trim();
-  if (!bin.includes(`/${version}/`) && !existsSync(`/usr/lib/postgresql/${version}/bin/pg_ctl`)) {
-    throw new Error(
-      `The data in ${dataDir} were made by PostgreSQL ${version}, which is no longer installed. Install postgresql-${version}, or start afresh with: npm run reset -- --yes`,
-    );
-  }
-  const control = bin.includes(`/${version}/`) ? join(bin, 'pg_ctl') : `/usr/lib/postgresql/${version}/bin/pg_ctl`;
+  if (!existsSync(join(dataDir, 'PG_VERSION'))) makeCluster(dataDir);
+  const control = findControl(dataDir);
   const options = `-p ${port} -c listen_addresses=127.0.0.1 -c unix_socket_directories='' -c max_connections=120 ${isThrowAway ? throwAwayOptions : ''}`;
   check(
     runAsServerUser(control, ['-w', '-t', '60', '-D', dataDir, '-l', logFile, '-o', options, 'start']),
@@ -92,11 +67,15 @@ export function startPostgres({ dataDir, port, isThrowAway = false }) {
 }
 
 /** Ends a cluster that an earlier run left behind; nothing happens where none runs. */
-export function stopPostgres(dataDir) {
+export function stopPostgres(stateDir) {
+  const dataDir = findDataDir(stateDir);
   if (!existsSync(join(dataDir, 'postmaster.pid'))) return false;
-  return (
-    runAsServerUser(join(findPostgresBin() ?? '', 'pg_ctl'), ['-w', '-D', dataDir, '-m', 'fast', 'stop']).status === 0
-  );
+  return runAsServerUser(findControl(dataDir), ['-w', '-D', dataDir, '-m', 'fast', 'stop']).status === 0;
+}
+
+/** Deletes the cluster of a state folder, wherever it lives. */
+export function removePostgresData(stateDir) {
+  rmSync(findDataDir(stateDir), { recursive: true, force: true });
 }
 
 /** Makes a database that is not there yet. */
@@ -108,6 +87,7 @@ export function ensureDatabase({ port, name }) {
       ['-X', '-At', '-h', '127.0.0.1', '-p', String(port), '-U', superuser, '-d', 'postgres', '-c', sql],
       { encoding: 'utf8' },
     );
-  if (run(`SELECT 1 FROM pg_database WHERE datname = '${name}'`).stdout.trim() === '1') return;
-  check(run(`CREATE DATABASE ${name}`), `Making the database ${name}`);
+  const known = run(`SELECT 1 FROM pg_database WHERE datname = '${name}'`);
+  check(known, 'Asking PostgreSQL for its databases');
+  if (known.stdout.trim() !== '1') check(run(`CREATE DATABASE ${name}`), `Making the database ${name}`);
 }

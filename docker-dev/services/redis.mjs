@@ -1,9 +1,10 @@
 import { spawn } from 'node:child_process';
-import { existsSync, mkdirSync, openSync, readFileSync } from 'node:fs';
+import { closeSync, existsSync, mkdirSync, openSync, readFileSync, realpathSync } from 'node:fs';
 import { createConnection } from 'node:net';
 import { join } from 'node:path';
 import { setTimeout as pause } from 'node:timers/promises';
 import { findProgram } from './debianPackages.mjs';
+import { identify, isStillThere, workingDirectory } from './processIdentity.mjs';
 
 /** One command in Redis's inline form; the first line of the answer, or null where nobody answers. */
 function ask(port, command) {
@@ -21,56 +22,60 @@ function ask(port, command) {
   });
 }
 
+function lastLines(file) {
+  return existsSync(file) ? readFileSync(file, 'utf8').trim().split('\n').slice(-5).join('\n') : '';
+}
+
 /**
  * Starts a private Redis on loopback: append-only file, and it keeps every key, as a queue must.
  * Resolves when it answers PING (the port opens earlier, while it is still loading).
  */
 export async function startRedis({ dataDir, port }) {
   mkdirSync(dataDir, { recursive: true });
-  const log = openSync(join(dataDir, 'redis.log'), 'a');
+  const logFile = join(dataDir, 'redis.log');
+  const log = openSync(logFile, 'a');
+  const options = {
+    port,
+    bind: '127.0.0.1',
+    dir: dataDir,
+    appendonly: 'yes',
+    appendfsync: 'everysec',
+    'maxmemory-policy': 'noeviction',
+    pidfile: join(dataDir, 'redis.pid'),
+    daemonize: 'no',
+  };
   const child = spawn(
     findProgram('redis-server'),
-    [
-      '--port',
-      String(port),
-      '--bind',
-      '127.0.0.1',
-      '--dir',
-      dataDir,
-      '--appendonly',
-      'yes',
-      '--appendfsync',
-      'everysec',
-      '--maxmemory-policy',
-      'noeviction',
-      '--pidfile',
-      join(dataDir, 'redis.pid'),
-      '--daemonize',
-      'no',
-    ],
-    { stdio: ['ignore', log, log], detached: true },
+    Object.entries(options).flatMap(([name, value]) => [`--${name}`, String(value)]),
+    { cwd: dataDir, stdio: ['ignore', log, log], detached: true },
   );
-  let exitCode = null;
-  child.once('exit', (code) => {
-    exitCode = code ?? 1;
-  });
-  for (let tries = 0; tries < 300; tries += 1) {
-    if (exitCode !== null) break;
+  closeSync(log);
+  let isOver = false;
+  child.once('error', () => (isOver = true));
+  child.once('exit', () => (isOver = true));
+  for (let tries = 0; tries < 300 && !isOver; tries += 1) {
     if ((await ask(port, 'PING')) === '+PONG') {
       child.unref();
-      return { pid: child.pid, stop: () => stopRedis(dataDir, port) };
+      return { pid: child.pid, stop: () => stopRedis(dataDir) };
     }
     await pause(100);
   }
-  throw new Error(
-    `Redis did not start; its log is ${join(dataDir, 'redis.log')}:\n${readFileSync(join(dataDir, 'redis.log'), 'utf8').split('\n').slice(-5).join('\n')}`,
-  );
+  throw new Error(`Redis did not start; its log is ${logFile}:\n${lastLines(logFile)}`);
 }
 
-/** Ends the Redis of this folder, if it is the one that answers on the port. */
-export async function stopRedis(dataDir, port) {
-  if (!existsSync(join(dataDir, 'redis.pid'))) return false;
-  await ask(port, 'SHUTDOWN SAVE');
-  for (let tries = 0; tries < 100 && existsSync(join(dataDir, 'redis.pid')); tries += 1) await pause(100);
+/** The Redis that works in this folder, or null: another program may have got its number since. */
+function findRedis(dataDir) {
+  const pidFile = join(dataDir, 'redis.pid');
+  if (!existsSync(pidFile)) return null;
+  const redis = identify(Number(readFileSync(pidFile, 'utf8')));
+  return redis && workingDirectory(redis.pid) === realpathSync(dataDir) ? redis : null;
+}
+
+/** Ends the Redis of this folder, and no other; it writes its data on SIGTERM. */
+export async function stopRedis(dataDir) {
+  const redis = findRedis(dataDir);
+  if (!redis) return false;
+  process.kill(redis.pid, 'SIGTERM');
+  for (let tries = 0; tries < 200 && isStillThere(redis); tries += 1) await pause(50);
   return true;
 }
