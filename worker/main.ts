@@ -8,6 +8,7 @@ import { reconcileCaptures } from '../server/queues/reconcileCaptures.js';
 import { relayCaptures } from '../server/queues/relayCaptures.js';
 import { ScreeningQueue } from '../server/queues/ScreeningQueue.js';
 import { createStorage } from '../server/storage/createStorage.js';
+import { sweepStore } from '../server/storage/sweepStore.js';
 import { beatHeart } from './loops/beatHeart.js';
 import { startLoop } from './loops/startLoop.js';
 import { createMailTransport } from './mail/createMailTransport.js';
@@ -19,6 +20,7 @@ import type { WorkerContext } from './WorkerContext.js';
 /** How soon a received capture reaches the queue when the server's own nudge was lost. */
 const relayIntervalMs = 1_000;
 const heartbeatMs = 5_000;
+const sweepIntervalMs = 60 * 60_000;
 const longestGraceMs = 60_000;
 
 /** Starts one worker process: the queue's consumer and the background tasks that keep rows, jobs and mails in step. */
@@ -44,6 +46,7 @@ async function main(): Promise<void> {
       await reconcileCaptures(dataSource, queue);
       await finishDueBatches(dataSource, config);
     }),
+    startLoop('sweep', sweepIntervalMs, logger, () => sweepStore(dataSource, storage)),
     startLoop('mail', config.MAIL_INTERVAL_MS, logger, () =>
       sendDueMail({ dataSource, transport, from: config.MAIL_FROM, logger }),
     ),
