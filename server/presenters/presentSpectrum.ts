@@ -33,7 +33,7 @@ export function presentSpectrum(spectrum: Spectrum, of: SpectrumOf, window: Spec
   const { resolutionHz } = spectrum;
   const mean = toDensities(spectrum.densityMean);
   const median = spectrum.densityMedian && toDensities(spectrum.densityMedian);
-  const first = Math.min(mean.length, Math.ceil((window.fromHz ?? 0) / resolutionHz - 1e-9));
+  const first = Math.min(mean.length, Math.max(0, Math.ceil((window.fromHz ?? 0) / resolutionHz - 1e-9)));
   const end = Math.min(mean.length, Math.floor((window.toHz ?? Infinity) / resolutionHz + 1e-9) + 1);
   const binsPerPool = Math.max(1, Math.ceil((end - first) / window.points));
 
