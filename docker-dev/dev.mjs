@@ -22,6 +22,9 @@ await runInstallation(
     processes.start('worker', bin('tsx'), ['watch', 'worker/main.ts'], devEnv, { isShown: true });
     processes.start('client', bin('vite'), [], devEnv, { isShown: true });
     await waitForHealth(settings.port);
+    if (settings.isDemo) {
+      processes.start('demo', bin('tsx'), ['server/demo/followUp.ts'], devEnv, { mayEnd: true });
+    }
     say(`ready: http://127.0.0.1:${settings.devPort} (API on ${settings.port})`);
   },
   { extraPorts: ({ devPort }) => [{ port: devPort, variable: 'DEV_PORT', purpose: "Vite's server" }] },

@@ -24,6 +24,7 @@ await runInstallation(async ({ settings, processes, env }) => {
 
   say(`ready: http://127.0.0.1:${settings.port}`);
   if (settings.isDemo) {
+    processes.start('demo', 'node', [built('server', 'demo', 'followUp.js')], env, { mayEnd: true });
     const { demoAccounts } = await import(built('server', 'demo', 'demoAccounts.js'));
     say('demo sign-ins:');
     for (const { role, email, password } of demoAccounts) {

@@ -18,7 +18,7 @@ export class Processes {
     this.onUnexpectedExit = onUnexpectedExit;
   }
 
-  start(name, command, args, env, { isShown = false } = {}) {
+  start(name, command, args, env, { isShown = false, mayEnd = false } = {}) {
     const child = spawn(command, args, { cwd: projectDir, env, stdio: ['ignore', 'pipe', 'pipe'], detached: true });
     const log = createWriteStream(join(this.logDir, `${name}.log`), { flags: 'a' });
     for (const stream of [child.stdout, child.stderr]) {
@@ -30,7 +30,7 @@ export class Processes {
       child.once('error', resolve);
     });
     void exited.then((code) => {
-      if (!this.#isStopping) this.onUnexpectedExit(name, code, join(this.logDir, `${name}.log`));
+      if (!this.#isStopping && !mayEnd) this.onUnexpectedExit(name, code, join(this.logDir, `${name}.log`));
     });
     if (child.pid) this.onStart(child.pid);
     this.#running.push({ child, exited });
