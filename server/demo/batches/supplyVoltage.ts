@@ -42,6 +42,6 @@ export const supplyVoltage: DemoBatch = {
     switchboard('board-1-fast.wav', 6400, 10, 'Board 1'),
     switchboard('board-1-slow.wav', 1210, 25, 'Board 1'),
     switchboard('board-2-slow.wav', 1210, 20, 'Board 2'),
-    switchboard('board-3-fast.wav', 6400, 12, 'Board 3'),
+    switchboard('board-3-fast.wav', 6400, 9, 'Board 3'),
   ],
 };
