@@ -6,6 +6,8 @@ import { connectDatabase } from './connectDatabase.js';
 import { createLogger, type Logger } from './logging/createLogger.js';
 import { ScreeningQueue } from './queues/ScreeningQueue.js';
 import { readVersion } from './readVersion.js';
+import { BcryptPool } from './security/BcryptPool.js';
+import { PasswordHasher } from './security/PasswordHasher.js';
 import { createStorage } from './storage/createStorage.js';
 
 const headersTimeoutMs = 20_000;
@@ -64,10 +66,15 @@ async function main(): Promise<void> {
     throw new Error('The database lacks the newest tables. Run: npm run db:migrate');
   }
   const queue = new ScreeningQueue(config.REDIS_URL, logger);
+  // Under the development loader hashing stays in this thread.
+  const bcryptPool = import.meta.url.endsWith('.js') ? new BcryptPool() : undefined;
+  const passwords = new PasswordHasher(config.BCRYPT_COST, bcryptPool);
+  await passwords.prepare();
   const app = createApp({
     config,
     dataSource,
     logger,
+    passwords,
     storage: createStorage(config),
     queue,
     version: readVersion(),
@@ -77,6 +84,7 @@ async function main(): Promise<void> {
   const server = createServer({ headersTimeout: headersTimeoutMs, requestTimeout: requestTimeoutMs }, app);
   await listen(server, config);
   stopOnSignal(server, logger, async () => {
+    await bcryptPool?.close();
     await queue.close();
     await dataSource.destroy();
   });

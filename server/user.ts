@@ -3,6 +3,7 @@ import { z } from 'zod';
 import { emailSchema, nameSchema } from '../shared/schemas/common.js';
 import { parseConfig } from './config/config.js';
 import { connectDatabase } from './connectDatabase.js';
+import { PasswordHasher } from './security/PasswordHasher.js';
 import { UserCommandService } from './services/UserCommandService.js';
 
 const usage = `Usage:
@@ -79,8 +80,9 @@ async function main(): Promise<void> {
   const args = readArguments();
   const config = parseConfig(process.env);
   const dataSource = await connectDatabase(config, { poolSize: 2 });
+  const passwords = new PasswordHasher(config.BCRYPT_COST);
   try {
-    await run(new UserCommandService({ config, dataSource, now: () => new Date() }), args);
+    await run(new UserCommandService({ config, dataSource, passwords, now: () => new Date() }), args);
   } finally {
     await dataSource.destroy();
   }

@@ -6,17 +6,12 @@ import { passwordResetMail } from '../mailbox/passwordResetMail.js';
 import { queueMail } from '../mailbox/queueMail.js';
 import type { Actor } from '../policies/Actor.js';
 import { revokeSessions } from '../repositories/sessionRepository.js';
-import { PasswordHasher } from '../security/PasswordHasher.js';
 import { requireUncommonPassword } from '../security/requireUncommonPassword.js';
 import { addAuditEntry } from './audit.js';
 import { closeOpenLinks, createOneTimeLink, findUsableLink, resetMinutesValid } from './oneTimeLinks.js';
 
 export class PasswordService {
-  private readonly hasher: PasswordHasher;
-
-  constructor(private readonly deps: Pick<AppDependencies, 'config' | 'dataSource' | 'now'>) {
-    this.hasher = new PasswordHasher(deps.config.BCRYPT_COST);
-  }
+  constructor(private readonly deps: Pick<AppDependencies, 'config' | 'dataSource' | 'now' | 'passwords'>) {}
 
   /** Says nothing about whether the address is known: only its owner learns it, by e-mail. */
   async requestReset(email: string): Promise<void> {
@@ -45,7 +40,7 @@ export class PasswordService {
     const { user } = await findUsableLink(dataSource.manager, token, now());
     requireUncommonPassword(password, user, 'body.password');
     // Hashing takes long on purpose: not while the row is locked.
-    const passwordHash = await this.hasher.hash(password);
+    const passwordHash = await this.deps.passwords.hash(password);
     await dataSource.transaction(async (manager) => {
       const at = now();
       const link = await findUsableLink(manager, token, at, { lock: true });
@@ -66,12 +61,12 @@ export class PasswordService {
   async change(actor: Actor, { currentPassword, newPassword }: ChangePassword): Promise<void> {
     const { dataSource, now } = this.deps;
     const user = await dataSource.manager.findOneByOrFail(User, { id: actor.userId });
-    if (!(await this.hasher.matches(currentPassword, user.passwordHash))) {
+    if (!(await this.deps.passwords.matches(currentPassword, user.passwordHash))) {
       const message = 'The current password is wrong.';
       throw new UnprocessableError('WRONG_PASSWORD', message, { details: [{ path: 'body.currentPassword', message }] });
     }
     requireUncommonPassword(newPassword, user, 'body.newPassword');
-    const passwordHash = await this.hasher.hash(newPassword);
+    const passwordHash = await this.deps.passwords.hash(newPassword);
     await dataSource.transaction(async (manager) => {
       const at = now();
       await manager.update(User, { id: user.id }, { passwordHash });

@@ -7,7 +7,6 @@ import { UnauthenticatedError } from '../errors/index.js';
 import type { Actor } from '../policies/Actor.js';
 import { findLiveSession } from '../repositories/sessionRepository.js';
 import { AccessTokens } from '../security/AccessTokens.js';
-import { PasswordHasher } from '../security/PasswordHasher.js';
 import { RenewalTokens } from '../security/RenewalTokens.js';
 import { hashSecret } from '../security/secretTokens.js';
 import { addAuditEntry } from './audit.js';
@@ -28,20 +27,18 @@ type Renewal = { session: Session; renewalToken: string } | 'missing' | 'expired
 export class SessionService {
   private readonly accessTokens: AccessTokens;
   private readonly renewalTokens: RenewalTokens;
-  private readonly hasher: PasswordHasher;
 
-  constructor(private readonly deps: Pick<AppDependencies, 'config' | 'dataSource' | 'logger' | 'now'>) {
+  constructor(private readonly deps: Pick<AppDependencies, 'config' | 'dataSource' | 'logger' | 'now' | 'passwords'>) {
     const { config, now } = deps;
     this.accessTokens = new AccessTokens(config.JWT_SECRET, config.ACCESS_TOKEN_MINUTES, now);
     this.renewalTokens = new RenewalTokens(config.JWT_SECRET);
-    this.hasher = new PasswordHasher(config.BCRYPT_COST);
   }
 
   /** @throws UnauthenticatedError, the same one and after the same time for every reason */
   async signIn({ email, password }: SignIn): Promise<IssuedSession> {
     const { dataSource, config, logger, now } = this.deps;
     const user = await dataSource.manager.findOneBy(User, { email });
-    const isRight = await this.hasher.matches(password, user?.isActive ? user.passwordHash : null);
+    const isRight = await this.deps.passwords.matches(password, user?.isActive ? user.passwordHash : null);
     if (!user || !isRight) {
       logger.warn({ userId: user?.id, event: 'signInRefused' }, 'sign-in refused');
       throw new UnauthenticatedError('BAD_CREDENTIALS', 'E-mail address or password is wrong.');

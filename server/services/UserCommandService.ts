@@ -4,14 +4,13 @@ import type { AppDependencies } from '../AppDependencies.js';
 import { User } from '../entities/index.js';
 import { ConflictError, InvalidInputError, isUniqueViolation, NotFoundError } from '../errors/index.js';
 import { revokeSessions } from '../repositories/sessionRepository.js';
-import { PasswordHasher } from '../security/PasswordHasher.js';
 import { requireUncommonPassword } from '../security/requireUncommonPassword.js';
 import { addAuditEntry } from './audit.js';
 import { createOneTimeLink } from './oneTimeLinks.js';
 
 /** What the command does with users: whoever can run it on the machine needs no sign-in. */
 export class UserCommandService {
-  constructor(private readonly deps: Pick<AppDependencies, 'config' | 'dataSource' | 'now'>) {}
+  constructor(private readonly deps: Pick<AppDependencies, 'config' | 'dataSource' | 'now' | 'passwords'>) {}
 
   list(): Promise<User[]> {
     return this.deps.dataSource.manager.find(User, { order: { email: 'ASC' } });
@@ -32,7 +31,7 @@ export class UserCommandService {
       throw new InvalidInputError('INVALID_INPUT', 'A password has 10 to 200 characters.');
     }
     requireUncommonPassword(password, data, 'password');
-    const passwordHash = await new PasswordHasher(this.deps.config.BCRYPT_COST).hash(password);
+    const passwordHash = await this.deps.passwords.hash(password);
     await this.add(data, passwordHash, () => Promise.resolve());
   }
 

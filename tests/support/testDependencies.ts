@@ -8,6 +8,7 @@ import type { AppDependencies } from '../../server/AppDependencies.js';
 import { parseConfig, type Config } from '../../server/config/config.js';
 import { createDataSource } from '../../server/createDataSource.js';
 import { createLogger } from '../../server/logging/createLogger.js';
+import { PasswordHasher } from '../../server/security/PasswordHasher.js';
 import { ScreeningQueue } from '../../server/queues/ScreeningQueue.js';
 import { createStorage } from '../../server/storage/createStorage.js';
 import { TestClock } from './TestClock.js';
@@ -66,6 +67,7 @@ export async function createTestDependencies(overrides: Partial<Config> = {}): P
     config,
     dataSource,
     logger,
+    passwords: new PasswordHasher(config.BCRYPT_COST),
     storage: createStorage(config),
     queue,
     queueName,
