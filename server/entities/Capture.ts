@@ -15,6 +15,12 @@ import { User } from './User.js';
 @Index(['projectId', 'state'])
 @Index(['projectId', 'sha256'])
 @Index(['state', 'queuedAt'])
+// Over expressions, which a decorator can't say: made in the migration IndexReviewOrders.
+@Index('IDX_captures_review_fold_score', { synchronize: false })
+@Index('IDX_captures_review_created_at', { synchronize: false })
+@Index('IDX_captures_review_clear_to', { synchronize: false })
+@Index('IDX_captures_review_file_name', { synchronize: false })
+@Index('IDX_captures_review_project', { synchronize: false })
 export class Capture extends BaseRow {
   @Column({ type: 'uuid' })
   batchId!: string;

@@ -1,21 +1,21 @@
-import type { CaptureDto } from '../../shared/schemas/capture.js';
+import type { CaptureDto } from '../../shared/schemas/row.js';
 import type { CaptureDetail } from '../services/CaptureService.js';
 import { presentCaptureRow } from './presentCaptureRow.js';
 import { presentDecision } from './presentDecision.js';
 
 export function presentCapture(detail: CaptureDetail): CaptureDto {
-  const { row, capture, screens, decisions, history, decideRefusal, editRefusal } = detail;
+  const { row, screens, decisions, history, decideRefusal, editRefusal } = detail;
   return {
     ...presentCaptureRow(row),
     channels: screens,
-    acquisition: { ...capture.batch.acquisition, ...capture.acquisition },
-    acquisitionOverride: capture.acquisition,
-    csvLayout: capture.csvLayout,
-    thresholdsVersion: capture.thresholdsVersion,
-    guardStart: detail.guardStart,
-    engineVersion: capture.engineVersion,
+    acquisition: { ...row.batchAcquisition, ...row.acquisition },
+    acquisitionOverride: row.acquisition,
+    csvLayout: row.csvLayout,
+    thresholdsVersion: row.thresholdsVersion,
+    guardStart: row.guardStart,
+    engineVersion: row.engineVersion,
     decisions: decisions.map(presentDecision),
-    decisionVersion: capture.decisionVersion,
+    decisionVersion: row.decisionVersion,
     history: history.map((entry) => ({
       at: entry.createdAt.toISOString(),
       actorName: entry.actorName,

@@ -1,5 +1,8 @@
 import type { DataSource, EntityManager } from 'typeorm';
+import type { AcquisitionSheet } from '../../shared/schemas/acquisitionSheet.js';
+import type { BatchState } from '../../shared/schemas/batch.js';
 import type { CaptureFormat, CaptureState } from '../../shared/schemas/capture.js';
+import type { CsvLayout } from '../../shared/schemas/csvLayout.js';
 import type { DecisionKind } from '../../shared/schemas/decision.js';
 import type { FindingKind, Verdict } from '../../shared/schemas/screening.js';
 import { escapeLikePattern } from './escapeLikePattern.js';
@@ -90,7 +93,8 @@ function conditions(filter: CaptureFilter, bind: (value: unknown) => string): st
   // A verdict belongs to a finished screening; a capture being screened again shows none.
   add(filter.verdict, (at) => `c.state = 'screened' AND c.verdict = ${at}`);
   add(filter.findingKind, (at) => `EXISTS (SELECT 1 FROM findings f WHERE f.capture_id = c.id AND f.kind = ${at})`);
-  add(filter.isDecided, (at) => `(c.decision_version > 0) = ${at}`);
+  // Written out, so that the planner finds the partial indexes of the review lists.
+  if (filter.isDecided !== undefined) found.push(`c.decision_version ${filter.isDecided ? '>' : '='} 0`);
   add(filter.clearToBelowHz, (at) => `c.clear_to_hz < ${at}`);
   add(filter.search && `%${escapeLikePattern(filter.search)}%`, (at) => {
     const logger = `coalesce(c.acquisition->>'logger', b.acquisition->>'logger')`;
@@ -103,35 +107,76 @@ function conditions(filter: CaptureFilter, bind: (value: unknown) => string): st
   return found;
 }
 
-/** Captures as rows of a list, with batch, project, people and the decision in force, in one statement. */
+/** Columns of a list's row; `c` is a capture with its sort key. */
+const listColumns = `
+  c.id, c.key, c.batch_id AS "batchId", b.name AS "batchName", c.project_id AS "projectId", p.name AS "projectName",
+  c.file_name AS "fileName", c.format, c.size_bytes AS "sizeBytes", c.sha256, c.state, c.progress, c.verdict,
+  c.fold_score AS "foldScore", c.clear_to_hz AS "clearToHz", c.sample_rate_hz AS "sampleRateHz",
+  c.duration_s AS "durationS", c.channel_count AS "channelCount",
+  coalesce(c.acquisition->>'logger', b.acquisition->>'logger') AS logger,
+  coalesce(c.acquisition->>'position', b.acquisition->>'position') AS position,
+  c.headline, c.failure_code AS "failureCode", c.failure_message AS "failureMessage", c.failure_line AS "failureLine",
+  c.duplicate_of_id AS "duplicateOfId", c.uploaded_by_id AS "uploadedById", u.name AS "uploadedByName",
+  c.created_at AS "createdAt", c.screened_at AS "screenedAt", d.id AS "decisionId", d.decision, d.limit_hz AS "limitHz",
+  d.reason, d.decided_by_id AS "decidedById", du.name AS "decidedByName", d.created_at AS "decidedAt",
+  c.decision_version AS "decisionVersion"`;
+
+const listJoins = `
+  JOIN batches b ON b.id = c.batch_id
+  JOIN projects p ON p.id = c.project_id
+  LEFT JOIN users u ON u.id = c.uploaded_by_id
+  LEFT JOIN decisions d ON d.capture_id = c.id AND d.version = c.decision_version
+  LEFT JOIN users du ON du.id = d.decided_by_id`;
+
+/**
+ * Captures as rows of a list, with batch, project, people and the decision in force, in one statement: the page is cut
+ * first, so that only its rows are joined.
+ */
 export function findCaptures(source: DataSource | EntityManager, filter: CaptureFilter): Promise<CaptureListRow[]> {
   const parameters: unknown[] = [];
   const bind = (value: unknown): string => `$${parameters.push(value)}`;
   const { expression, isDescending } = captureOrders[filter.order];
   const where = conditions(filter, bind).join(' AND ');
   const direction = isDescending ? 'DESC' : 'ASC';
+  const orderBy = `ORDER BY ${expression} ${direction}, c.id ${direction}`;
   return source.query(
-    `SELECT c.id, (${expression})::text AS key, c.batch_id AS "batchId", b.name AS "batchName",
-            c.project_id AS "projectId", p.name AS "projectName", c.file_name AS "fileName", c.format,
-            c.size_bytes AS "sizeBytes", c.sha256, c.state, c.progress, c.verdict, c.fold_score AS "foldScore",
-            c.clear_to_hz AS "clearToHz", c.sample_rate_hz AS "sampleRateHz", c.duration_s AS "durationS",
-            c.channel_count AS "channelCount",
-            coalesce(c.acquisition->>'logger', b.acquisition->>'logger') AS logger,
-            coalesce(c.acquisition->>'position', b.acquisition->>'position') AS position,
-            c.headline, c.failure_code AS "failureCode", c.failure_message AS "failureMessage",
-            c.failure_line AS "failureLine", c.duplicate_of_id AS "duplicateOfId",
-            c.uploaded_by_id AS "uploadedById", u.name AS "uploadedByName", c.created_at AS "createdAt",
-            c.screened_at AS "screenedAt", d.id AS "decisionId", d.decision, d.limit_hz AS "limitHz", d.reason,
-            d.decided_by_id AS "decidedById", du.name AS "decidedByName", d.created_at AS "decidedAt",
-            c.decision_version AS "decisionVersion"
-       FROM captures c
-       JOIN batches b ON b.id = c.batch_id
-       JOIN projects p ON p.id = c.project_id
-       LEFT JOIN users u ON u.id = c.uploaded_by_id
-       LEFT JOIN decisions d ON d.capture_id = c.id AND d.version = c.decision_version
-       LEFT JOIN users du ON du.id = d.decided_by_id
-      ${where === '' ? '' : `WHERE ${where}`}
-      ORDER BY ${expression} ${direction}, c.id ${direction} LIMIT ${bind(filter.limit)}`,
+    `WITH page AS (
+       SELECT c.*, (${expression})::text AS key FROM captures c
+       ${filter.search ? 'JOIN batches b ON b.id = c.batch_id' : ''}
+       ${where === '' ? '' : `WHERE ${where}`}
+       ${orderBy} LIMIT ${bind(filter.limit)})
+     SELECT ${listColumns} FROM page c ${listJoins} ${orderBy}`,
     parameters,
   );
+}
+
+/** One capture's row of a list with what its page and its policies need besides. */
+export interface CaptureDetailRow extends CaptureListRow {
+  batchState: BatchState;
+  batchAcquisition: AcquisitionSheet;
+  acquisition: AcquisitionSheet;
+  csvLayout: CsvLayout | null;
+  engineVersion: string | null;
+  thresholdsVersion: number | null;
+  /** Of the version it was judged with; null before. */
+  guardStart: number | null;
+  independentReview: boolean;
+}
+
+export async function findCaptureDetail(
+  source: DataSource | EntityManager,
+  captureId: string,
+): Promise<CaptureDetailRow | null> {
+  const [row] = await source.query<CaptureDetailRow[]>(
+    `SELECT ${listColumns}, b.state AS "batchState", b.acquisition AS "batchAcquisition", c.acquisition,
+            c.csv_layout AS "csvLayout", c.engine_version AS "engineVersion",
+            c.thresholds_version AS "thresholdsVersion", (used.values->>'guardStart')::float8 AS "guardStart",
+            coalesce((current.values->>'independentReview')::boolean, false) AS "independentReview"
+       FROM (SELECT *, '' AS key FROM captures WHERE id = $1) c ${listJoins}
+       LEFT JOIN thresholds_versions used ON used.project_id = c.project_id AND used.version = c.thresholds_version
+       LEFT JOIN LATERAL (SELECT values FROM thresholds_versions t WHERE t.project_id = c.project_id
+                           ORDER BY version DESC LIMIT 1) current ON true`,
+    [captureId],
+  );
+  return row ?? null;
 }

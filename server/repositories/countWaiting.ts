@@ -4,14 +4,15 @@ import type { StartPage } from '../../shared/schemas/system.js';
 /** What waits in these projects, in one statement. */
 export async function countWaiting(source: DataSource, projectIds: string[]): Promise<StartPage> {
   const [row] = await source.query<Record<string, number>[]>(
-    `SELECT (count(*) FILTER (WHERE c.state = 'screened' AND c.decision_version = 0))::int AS awaiting,
-            (count(*) FILTER (WHERE d.decision = 'retake'))::int AS retakes,
-            (count(*) FILTER (WHERE c.state = 'failed'))::int AS failed,
-            (count(*) FILTER (WHERE c.state IN ('received', 'queued')))::int AS waiting,
-            (count(*) FILTER (WHERE c.state = 'screening'))::int AS screening
-       FROM captures c
-       LEFT JOIN decisions d ON d.capture_id = c.id AND d.version = c.decision_version
-      WHERE c.project_id = ANY($1::uuid[])`,
+    `SELECT (SELECT count(*)::int FROM captures
+              WHERE project_id = ANY($1::uuid[]) AND state = 'screened' AND decision_version = 0) AS awaiting,
+            (SELECT count(*)::int FROM decisions d JOIN captures c ON c.id = d.capture_id
+              WHERE d.decision = 'retake' AND d.version = c.decision_version AND c.project_id = ANY($1)) AS retakes,
+            (count(*) FILTER (WHERE state = 'failed'))::int AS failed,
+            (count(*) FILTER (WHERE state IN ('received', 'queued')))::int AS waiting,
+            (count(*) FILTER (WHERE state = 'screening'))::int AS screening
+       FROM captures
+      WHERE project_id = ANY($1) AND state IN ('received', 'queued', 'screening', 'failed')`,
     [projectIds],
   );
   return {

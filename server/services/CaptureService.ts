@@ -3,25 +3,26 @@ import type { z } from 'zod';
 import type { captureListQuerySchema, spectrumQuerySchema } from '../../shared/schemas/capture.js';
 import type { ChannelScreen } from '../../shared/schemas/screening.js';
 import type { AppDependencies } from '../AppDependencies.js';
-import { AuditEntry, Batch, Capture, ChannelResult, Decision, Spectrum, ThresholdsVersion } from '../entities/index.js';
+import { AuditEntry, Batch, Capture, ChannelResult, Decision, Spectrum } from '../entities/index.js';
 import { ConflictError, GoneError, NotFoundError, type AppError } from '../errors/index.js';
 import type { Actor } from '../policies/Actor.js';
 import { refuseDecision, refuseEdit } from '../policies/capturePolicy.js';
 import { requireProjectReader } from '../policies/requireProjectAccess.js';
-import { findCaptures, captureOrders, type CaptureListRow } from '../repositories/captureRepository.js';
+import {
+  captureOrders,
+  findCaptureDetail,
+  findCaptures,
+  type CaptureDetailRow,
+} from '../repositories/captureRepository.js';
 import { cutPage, pageCursor } from '../repositories/pageCursor.js';
-import { findCurrentThresholds } from '../repositories/thresholdsRepository.js';
 import { StoredFileMissingError } from '../storage/StoredFileMissingError.js';
 
 export interface CaptureDetail {
-  row: CaptureListRow;
-  /** With its batch. */
-  capture: Capture;
+  row: CaptureDetailRow;
   /** Empty unless the capture is screened: results of an earlier screening are not those of the sheet shown. */
   screens: ChannelScreen[];
   decisions: Decision[];
   history: AuditEntry[];
-  guardStart: number | null;
   decideRefusal: AppError | null;
   editRefusal: AppError | null;
 }
@@ -49,12 +50,12 @@ export class CaptureService {
 
   /** Everything about one capture. */
   async read(actor: Actor, captureId: string): Promise<CaptureDetail> {
-    const capture = await this.load(actor, captureId);
     const { manager } = this.deps.dataSource;
-    const { projectId } = capture;
-    const [[row], screens, decisions, history, current, used] = await Promise.all([
-      findCaptures(manager, { order: 'newest', limit: 1, id: captureId }),
-      capture.state === 'screened'
+    const row = await findCaptureDetail(manager, captureId);
+    if (!row) throw new NotFoundError();
+    requireProjectReader(actor, row.projectId);
+    const [screens, decisions, history] = await Promise.all([
+      row.state === 'screened'
         ? manager.find(ChannelResult, {
             select: { id: true, screen: true },
             where: { captureId },
@@ -66,22 +67,14 @@ export class CaptureService {
         where: { entityType: 'capture', entityId: captureId },
         order: { createdAt: 'ASC', id: 'ASC' },
       }),
-      findCurrentThresholds(manager, projectId),
-      capture.thresholdsVersion === null
-        ? null
-        : manager.findOneBy(ThresholdsVersion, { projectId, version: capture.thresholdsVersion }),
     ]);
-    if (!row) throw new NotFoundError();
-    const standing = { ...capture, batchState: capture.batch.state };
     return {
       row,
-      capture,
       screens: screens.map(({ screen }) => screen),
       decisions,
       history,
-      guardStart: used?.values.guardStart ?? null,
-      decideRefusal: refuseDecision(actor, standing, current.values),
-      editRefusal: refuseEdit(actor, standing),
+      decideRefusal: refuseDecision(actor, row, row),
+      editRefusal: refuseEdit(actor, row),
     };
   }
 
@@ -117,10 +110,7 @@ export class CaptureService {
   }
 
   private async load(actor: Actor, captureId: string): Promise<Capture> {
-    const capture = await this.deps.dataSource.manager.findOne(Capture, {
-      where: { id: captureId },
-      relations: { batch: true },
-    });
+    const capture = await this.deps.dataSource.manager.findOneBy(Capture, { id: captureId });
     if (!capture) throw new NotFoundError();
     requireProjectReader(actor, capture.projectId);
     return capture;
