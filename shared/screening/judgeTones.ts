@@ -18,6 +18,8 @@ export interface TonesJudgement {
 /** Relative error of a frequency written into a sheet: speeds and supplies are known to about this. */
 const statedRelativeError = 2e-3;
 const candidatesListed = 4;
+/** Below the total power by the protection and this much more, a folded tone is no reason to call a capture folded. */
+const immaterialBelowDb = 25;
 const largestLogRatio = 6;
 
 /** Explains each tone that stands out: stated source, harmonic, supply, folded source, folded member of a family, or nothing. */
@@ -62,12 +64,20 @@ export function judgeTones(record: MeasurementRecord, thresholds: Thresholds, sh
   const folded = tones.filter(
     (tone) => tone.explanation.startsWith('folded') || tone.explanation === 'movedBetweenRates',
   );
-  const leastChance = folded.reduce((least, tone) => Math.min(least, tone.chanceProbability ?? 1), 1);
+  // A folded tone far below what the project asks protection from is reported, but does not decide.
+  const totalDb = record.level?.powerDb ?? 0;
+  const isMaterial = (tone: Tone): boolean =>
+    tone.levelDb > totalDb - thresholds.requiredProtectionDb - immaterialBelowDb;
+  const material = folded.filter(isMaterial);
+  const leastChance = material.reduce((least, tone) => Math.min(least, tone.chanceProbability ?? 1), 1);
   const logRatio =
     folded.length === 0 ? 0 : Math.min(largestLogRatio, Math.max(0, -Math.log(Math.max(leastChance, 1e-6)) / 1.5));
   const findings = folded
     .filter((tone) => tone.confidence >= thresholds.confidence)
-    .map((tone) => foldedToneFinding(tone, sampleRateHz));
+    .map((tone): Finding => {
+      const finding = foldedToneFinding(tone, sampleRateHz);
+      return isMaterial(tone) ? finding : { ...finding, severity: 'limit' };
+    });
   return { tones, findings: [...findings, ...sourcesAtFold(sheet, sampleRateHz)], logRatio };
 }
 

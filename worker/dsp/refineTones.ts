@@ -41,15 +41,23 @@ function energy(values: Float64Array | undefined): number {
   return values === undefined ? 0 : values.reduce((sum, value) => sum + value * value, 0);
 }
 
+/** Leakage below this share of a tone's own amplitude is left in. */
+const negligible = 1e-5;
+
 /** The blocks of one tone with the leakage of all others, and of all conjugates, taken out. */
 function lessOthers(demodulator: ToneDemodulator, tones: RefinedTone[], index: number): Float64Array {
   const { omegas, blocks, blockFrames, origin, values } = demodulator;
   const result = Float64Array.from(values[index] as Float64Array);
   const here = omegas[index] as number;
+  const own = (tones[index] as RefinedTone).amplitude;
+  const ownSize = Math.hypot(own.real, own.imaginary);
   tones.forEach((other, place) => {
     const { real: a, imaginary: b } = other.amplitude;
     if (a === 0 && b === 0) return;
     const omega = (omegas[place] as number) + other.delta;
+    // Far and weak tones leave nothing worth the trigonometry.
+    const leak = Math.hypot(a, b) / Math.max(1e-12, Math.abs(Math.sin((omega - here) / 2)));
+    if (place !== index && leak < negligible * blocks * blockFrames * ownSize) return;
     for (let block = 0; block < blocks; block++) {
       const image = blockResponse(-omega - here, block, blockFrames, origin);
       let real = a * image.real + b * image.imaginary;

@@ -1,13 +1,11 @@
 import type { AcquisitionSheet } from '../../shared/schemas/acquisitionSheet.js';
-import type { IrregularMeasurement, ToneMeasurement } from '../../shared/screening/MeasurementRecord.js';
-import { ToneDemodulator } from '../dsp/ToneDemodulator.js';
+import type { IrregularMeasurement } from '../../shared/screening/MeasurementRecord.js';
 import type { SampleSource } from '../readers/SampleSource.js';
+import { addTones } from './addTones.js';
 import { buildMeasurement, type ChannelParts } from './buildMeasurement.js';
 import type { ChannelMeasurement } from './ChannelMeasurement.js';
 import { type FrameSpan, holdLastFinite, IntegrityMeter } from './IntegrityMeter.js';
 import { measureIrregular } from './measureIrregular.js';
-import { measureTones } from './measureTones.js';
-import { pickTones } from './pickTones.js';
 import { leastSamples, planSegments } from './planSegments.js';
 import { SpectrumMeter } from './SpectrumMeter.js';
 
@@ -16,8 +14,6 @@ export interface MeasureOptions {
   signal?: AbortSignal;
 }
 
-/** Frames refined by least squares: a longer stretch gains nothing on real sources, whose speed wanders. */
-const mostRefinedFrames = 2 ** 21;
 const blockFrames = 16_384;
 
 /**
@@ -52,15 +48,18 @@ export function measureCapture(
 }
 
 type OnBlock = (channels: Float64Array[], frames: number, firstFrame: number) => void;
-type Pass = (index: number, onBlock: OnBlock) => void;
+/** Reads the source once more; `index` 0 … 2 places the pass in the progress. */
+export type Pass = (index: number, onBlock: OnBlock) => void;
 
 function createPasses(source: SampleSource, { onProgress, signal }: MeasureOptions): Pass {
+  let reached = 0;
   return (index, onBlock) => {
     source.readBlocks(
       (channels, frames, firstFrame) => {
         signal?.throwIfAborted();
         onBlock(channels, frames, firstFrame);
-        onProgress?.((index + (firstFrame + frames) / Math.max(1, source.frameCount)) / 3);
+        reached = Math.max(reached, (index + (firstFrame + frames) / Math.max(1, source.frameCount)) / 3);
+        onProgress?.(reached);
       },
       signal === undefined ? { blockFrames } : { blockFrames, signal },
     );
@@ -70,34 +69,13 @@ function createPasses(source: SampleSource, { onProgress, signal }: MeasureOptio
 function addSpectra(source: SampleSource, rateHz: number, parts: ChannelParts[], pass: Pass): void {
   const plan = planSegments(source.frameCount, source.channelCount);
   const meters = parts.map((part) => {
-    const damage = avoidedSpans(source, rateHz, part);
-    return new SpectrumMeter(plan, rateHz, damage);
+    part.spectra = new SpectrumMeter(plan, rateHz, avoidedSpans(source, rateHz, part));
+    return part.spectra;
   });
   pass(1, (channels, frames) =>
     meters.forEach((meter, c) => meter.push(holdLastFinite(channels[c] as Float64Array, frames), frames)),
   );
-  const usedFrames = Math.min(source.frameCount, mostRefinedFrames);
-  const blocks = 64;
-  const demodulators = meters.map((meter, c) => {
-    (parts[c] as ChannelParts).spectra = meter;
-    const picked = pickTones(meter);
-    const omegas = picked.map((tone) => (2 * Math.PI * tone.frequencyHz) / rateHz);
-    return { picked, demodulator: new ToneDemodulator(omegas, blocks, Math.floor(usedFrames / blocks)) };
-  });
-  if (demodulators.some(({ picked }) => picked.length > 0)) {
-    pass(2, (channels, frames, first) => {
-      if (first >= usedFrames) return;
-      demodulators.forEach(({ demodulator }, c) => {
-        const mean = parts[c]?.integrity.level?.mean ?? 0;
-        demodulator.push(holdLastFinite(channels[c] as Float64Array, frames), frames, first, mean);
-      });
-    });
-  }
-  demodulators.forEach(({ picked, demodulator }, c) => {
-    const fineHz = (meters[c] as SpectrumMeter).fine.resolutionHz;
-    const tones: ToneMeasurement[] = measureTones(picked, demodulator, rateHz, fineHz);
-    (parts[c] as ChannelParts).tones = tones;
-  });
+  addTones(source, rateHz, parts, meters, pass);
 }
 
 /**

@@ -1,7 +1,7 @@
 import type { ToneMeasurement } from '../../shared/screening/MeasurementRecord.js';
 import { cramerRaoHz } from '../dsp/cramerRaoHz.js';
 import { decibels } from '../dsp/decibels.js';
-import { refineTones } from '../dsp/refineTones.js';
+import type { RefinedTone } from '../dsp/refineTones.js';
 import type { ToneDemodulator } from '../dsp/ToneDemodulator.js';
 import { toneWander } from '../dsp/toneWander.js';
 import type { PickedTone } from './pickTones.js';
@@ -12,11 +12,11 @@ const leastCoherentShare = 0.3;
 /** Least-squares figures of picked tones from their demodulated blocks; a tone that wanders too far keeps its peak's figures. */
 export function measureTones(
   picked: PickedTone[],
+  refined: RefinedTone[],
   demodulator: ToneDemodulator,
   sampleRateHz: number,
   fineHz: number,
 ): ToneMeasurement[] {
-  const refined = refineTones(demodulator, (2 * Math.PI * fineHz) / sampleRateHz);
   const frames = demodulator.blocks * demodulator.blockFrames;
   return picked.map((tone, index) => {
     const fit = refined[index];
