@@ -57,6 +57,8 @@ const missingWord = /^(nan|-?inf|\+inf|-?infinity|n\/?a|null|-|--)$/i;
 export function parseCell(cell: string, decimalSign: CsvLayout['decimalSign']): number | undefined {
   const trimmed = cell.trim();
   if (trimmed === '' || missingWord.test(trimmed)) return Number.NaN;
+  // Where the comma is the decimal sign a point can only separate thousands: 1.234 is not 1,234 thousandths.
+  if (decimalSign === ',' && trimmed.includes('.')) return undefined;
   const text = decimalSign === ',' ? trimmed.replace(',', '.') : trimmed;
   return plainNumber.test(text) ? Number(text) : undefined;
 }

@@ -1,5 +1,5 @@
 import { acquisitionSheetSchema, type AcquisitionSheet } from '../schemas/acquisitionSheet.js';
-import { splitCells, splitLines } from './csvText.js';
+import { parseCell, splitCells, splitLines } from './csvText.js';
 
 export interface Manifest {
   byFile: Record<string, AcquisitionSheet>;
@@ -14,17 +14,20 @@ type ManifestColumn = (typeof manifestColumns)[number];
 
 type Cells = Partial<Record<ManifestColumn, string>>;
 
+/** Plain decimal numbers only; everything else becomes NaN, which the schema reports. */
+const numberOf = (cell = ''): number => parseCell(cell, '.') ?? Number.NaN;
+
 /** The cells of one row as an unchecked sheet; empty cells leave their field out. */
 function sheetOf(cells: Cells): Record<string, unknown> {
   const filled = (column: ManifestColumn): boolean => (cells[column] ?? '') !== '';
-  const numbers = numericColumns.filter(filled).map((column) => [column, Number(cells[column])]);
+  const numbers = numericColumns.filter(filled).map((column) => [column, numberOf(cells[column])]);
   const texts = textColumns.filter(filled).map((column) => [column, cells[column]]);
   const filter = filterColumns.some(filled)
     ? {
         filter: {
           type: cells.filterType === undefined || cells.filterType === '' ? 'unknown' : cells.filterType,
-          ...(filled('filterOrder') ? { order: Number(cells.filterOrder) } : {}),
-          ...(filled('filterCornerHz') ? { cornerHz: Number(cells.filterCornerHz) } : {}),
+          ...(filled('filterOrder') ? { order: numberOf(cells.filterOrder) } : {}),
+          ...(filled('filterCornerHz') ? { cornerHz: numberOf(cells.filterCornerHz) } : {}),
         },
       }
     : {};
@@ -33,7 +36,7 @@ function sheetOf(cells: Cells): Record<string, unknown> {
         sources: (cells.sources ?? '')
           .trim()
           .split(/\s+/)
-          .map((value) => ({ frequencyHz: Number(value) })),
+          .map((value) => ({ frequencyHz: numberOf(value) })),
       }
     : {};
   return { ...Object.fromEntries([...numbers, ...texts]), ...filter, ...sources };
