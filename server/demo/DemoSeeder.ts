@@ -25,6 +25,7 @@ export class DemoSeeder {
       AppDependencies,
       'config' | 'dataSource' | 'logger' | 'passwords' | 'queue' | 'storage'
     >,
+    private readonly projects: readonly DemoProject[] = demoProjects,
   ) {}
 
   /** @returns whether there was anything to do */
@@ -32,7 +33,7 @@ export class DemoSeeder {
     const { manager } = this.deps.dataSource;
     if (await manager.existsBy(AuditEntry, { action: doneAction })) return false;
     await this.addAccounts(manager);
-    for (const project of demoProjects) await this.addProject(project);
+    for (const project of this.projects) await this.addProject(project);
     await addAuditEntry(manager, {
       actor: null,
       entityType: 'project',
