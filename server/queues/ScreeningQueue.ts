@@ -1,6 +1,6 @@
 import { setTimeout as delay } from 'node:timers/promises';
 import { Queue } from 'bullmq';
-import { Redis } from 'ioredis';
+import { Redis, ReplyError } from 'ioredis';
 import { screenCaptureJobId, screeningQueueName, type ScreenCapturePayload } from '../../shared/jobs/screenCapture.js';
 import type { Logger } from '../logging/createLogger.js';
 
@@ -9,7 +9,7 @@ const keptJobs = 1000;
 const triesPerJob = 4;
 const firstBackOffMs = 2_000;
 /** A Redis that takes connections but doesn't answer must not hold up an upload. */
-const commandTimeoutMs = 2_000;
+const commandTimeoutMs = 1_000;
 /** A connection just being made is waited for this long. */
 const connectWaitMs = 500;
 const connectPollMs = 20;
@@ -59,9 +59,9 @@ export class ScreeningQueue {
   /** @throws Error when Redis doesn't answer, or would throw jobs away when memory runs short */
   async check(): Promise<void> {
     await this.requireReachable();
-    const policy = (await this.connection.config('GET', 'maxmemory-policy')) as string[];
-    if (policy[1] !== undefined && policy[1] !== 'noeviction') {
-      throw new Error(`Redis must keep every key: set maxmemory-policy noeviction (it is ${policy[1]}).`);
+    const policy = await this.readEvictionPolicy();
+    if (policy !== null && policy !== 'noeviction') {
+      throw new Error(`Redis must keep every key: set maxmemory-policy noeviction (it is ${policy}).`);
     }
   }
 
@@ -81,6 +81,17 @@ export class ScreeningQueue {
   async close(): Promise<void> {
     await this.queue?.close();
     this.connection.disconnect();
+  }
+
+  /** Null where the account may not read the settings, as with many hosted ones. */
+  private async readEvictionPolicy(): Promise<string | null> {
+    try {
+      const [, policy] = (await this.connection.config('GET', 'maxmemory-policy')) as string[];
+      return policy ?? null;
+    } catch (error) {
+      if (error instanceof ReplyError) return null;
+      throw error;
+    }
   }
 
   /**
