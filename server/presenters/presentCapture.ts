@@ -1,4 +1,4 @@
-import type { CaptureDto } from '../../shared/schemas/row.js';
+import type { CaptureDto } from '../../shared/schemas/capture.js';
 import type { CaptureDetail } from '../services/CaptureService.js';
 import { presentCaptureRow } from './presentCaptureRow.js';
 import { presentDecision } from './presentDecision.js';
