@@ -1,76 +1,15 @@
 import { randomUUID } from 'node:crypto';
-import { writeFile } from 'node:fs/promises';
-import path from 'node:path';
 import type { Test } from 'supertest';
 import { afterAll, beforeAll, beforeEach, describe, expect, it } from 'vitest';
-import { projectRoles } from '../../shared/schemas/account.js';
-import { Batch, Capture, MailMessage, type User } from '../../server/entities/index.js';
-import { queueMail } from '../../server/mailbox/queueMail.js';
-import { newStorageKey } from '../../server/storage/newStorageKey.js';
-import { buildMember } from '../support/factories/buildMember.js';
-import { buildProject } from '../support/factories/buildProject.js';
-import { buildUser } from '../support/factories/buildUser.js';
+import { buildMatrixFixture, sendMatrixRow, type MatrixUsers } from '../support/buildMatrixFixture.js';
 import { errorOf } from '../support/errorOf.js';
 import { expressRoutes } from '../support/expressRoutes.js';
 import { createTestApp, type TestApp, type TestClient } from '../support/testApp.js';
 import { askers, authorizationMatrix, type Asker, type MatrixFixture, type MatrixRow } from './authorizationMatrix.js';
 
 let app: TestApp;
-let users: Record<Exclude<Asker, 'nobody'>, User>;
+let users: MatrixUsers;
 let fixture: MatrixFixture;
-
-async function storeFile(): Promise<string> {
-  const key = newStorageKey();
-  const temporaryPath = path.join(app.deps.storage.temporaryDir, randomUUID());
-  await app.deps.storage.check();
-  await writeFile(temporaryPath, 'time;value\n0;1\n');
-  await app.deps.storage.save(key, temporaryPath);
-  return key;
-}
-
-async function buildCaptures(
-  projectId: string,
-): Promise<Omit<MatrixFixture, 'projectId' | 'analystId' | 'otherUserId' | 'invitedUserId' | 'failedMailId'>> {
-  const { manager } = app.deps.dataSource;
-  const batch = await manager.save(manager.create(Batch, { projectId, name: 'Hall 1', createdById: users.analyst.id }));
-  const common = { batchId: batch.id, projectId, format: 'csv', sizeBytes: 15, sha256: '0'.repeat(64) } as const;
-  const screened = await manager.save(
-    manager.create(Capture, {
-      ...common,
-      fileName: 'screened.csv',
-      storageKey: await storeFile(),
-      state: 'screened',
-      verdict: 'clear',
-      screenedAt: new Date(),
-    }),
-  );
-  const failed = await manager.save(
-    manager.create(Capture, {
-      ...common,
-      fileName: 'failed.csv',
-      storageKey: newStorageKey(),
-      state: 'failed',
-      failureCode: 'RAGGED',
-      failureMessage: 'Line 3 has too few columns.',
-    }),
-  );
-  return { batchId: batch.id, screenedCaptureId: screened.id, failedCaptureId: failed.id };
-}
-
-async function buildFailedMail(): Promise<string> {
-  const { manager } = app.deps.dataSource;
-  const dedupeKey = randomUUID();
-  await queueMail(manager, {
-    dedupeKey,
-    kind: 'invitation',
-    recipient: 'a@x.example',
-    subject: 'S',
-    text: 'T',
-    html: 'H',
-  });
-  await manager.update(MailMessage, { dedupeKey }, { state: 'failed' });
-  return (await manager.findOneByOrFail(MailMessage, { dedupeKey })).id;
-}
 
 beforeAll(async () => {
   app = await createTestApp({ config: { SIGN_IN_ATTEMPTS_PER_15_MIN: 10_000 } });
@@ -78,38 +17,14 @@ beforeAll(async () => {
 afterAll(() => app.close());
 
 beforeEach(async () => {
-  const { dataSource } = app.deps;
-  await dataSource.query('truncate users, projects, mail_messages cascade');
-  const project = await buildProject(dataSource);
-  const foreign = await buildProject(dataSource);
-  users = {
-    stranger: await buildUser(dataSource),
-    foreign: await buildMember(dataSource, foreign.id, [...projectRoles]),
-    analyst: await buildMember(dataSource, project.id, ['analyst']),
-    reviewer: await buildMember(dataSource, project.id, ['reviewer']),
-    qaManager: await buildMember(dataSource, project.id, ['qaManager']),
-    admin: await buildUser(dataSource, { isAdmin: true }),
-  };
-  fixture = {
-    projectId: project.id,
-    ...(await buildCaptures(project.id)),
-    analystId: users.analyst.id,
-    otherUserId: (await buildUser(dataSource)).id,
-    invitedUserId: (await buildUser(dataSource, { password: null })).id,
-    failedMailId: await buildFailedMail(),
-  };
+  await app.deps.dataSource.query('truncate users, projects, mail_messages cascade');
+  ({ users, fixture } = await buildMatrixFixture(app.deps));
 });
 
 const clientOf = (asker: Asker): Promise<TestClient> | TestClient =>
   asker === 'nobody' ? app.anonymous : app.as(users[asker]);
 
-function send(client: TestClient, row: MatrixRow): Test {
-  let test = client[row.method](row.url(fixture));
-  for (const [name, content] of Object.entries(row.files ?? {}))
-    test = test.attach('files', Buffer.from(content), name);
-  return row.files ? test : test.send(row.body);
-}
-
+const send = (client: TestClient, row: MatrixRow): Test => sendMatrixRow(client, row, fixture);
 const nameOf = (row: MatrixRow): string => `${row.method.toUpperCase()} ${row.path}`;
 
 describe('the authorization matrix', () => {
