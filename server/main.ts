@@ -9,6 +9,7 @@ import { readVersion } from './readVersion.js';
 import { BcryptPool } from './security/BcryptPool.js';
 import { PasswordHasher } from './security/PasswordHasher.js';
 import { createStorage } from './storage/createStorage.js';
+import { uploadFolders } from './storage/uploadFolders.js';
 
 const headersTimeoutMs = 20_000;
 /** A large capture over a slow line; the reader itself enforces size and number. */
@@ -70,12 +71,14 @@ async function main(): Promise<void> {
   const bcryptPool = import.meta.url.endsWith('.js') ? new BcryptPool() : undefined;
   const passwords = new PasswordHasher(config.BCRYPT_COST, bcryptPool);
   await passwords.prepare();
+  const storage = createStorage(config);
+  await uploadFolders.clearDead(storage.temporaryDir);
   const app = createApp({
     config,
     dataSource,
     logger,
     passwords,
-    storage: createStorage(config),
+    storage,
     queue,
     version: readVersion(),
     now: () => new Date(),

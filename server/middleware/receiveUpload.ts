@@ -1,6 +1,6 @@
 import { createHash, randomUUID } from 'node:crypto';
 import { createWriteStream } from 'node:fs';
-import { mkdir, mkdtemp, rm } from 'node:fs/promises';
+import { rm } from 'node:fs/promises';
 import path from 'node:path';
 import { Transform } from 'node:stream';
 import { pipeline } from 'node:stream/promises';
@@ -13,6 +13,7 @@ import {
   UnsupportedMediaTypeError,
   type AppError,
 } from '../errors/index.js';
+import { uploadFolders } from '../storage/uploadFolders.js';
 
 /** Enough to recognise a format by; nothing more of a file is ever held in memory. */
 const firstBytesLimit = 64 * 1024;
@@ -125,8 +126,7 @@ export async function receiveUpload<T>(
   if (!request.is('multipart/form-data')) {
     throw new UnsupportedMediaTypeError('UNSUPPORTED_MEDIA_TYPE', 'Send the files as multipart/form-data.');
   }
-  await mkdir(temporaryDir, { recursive: true });
-  const folder = await mkdtemp(path.join(temporaryDir, 'upload-'));
+  const folder = await uploadFolders.create(temporaryDir);
   try {
     const files: ReceivedFile[] = [];
     const read = multer({
