@@ -3,6 +3,8 @@ import type { MeasurementRecord } from './MeasurementRecord.js';
 import { stopbandEnvelope } from './filterModels.js';
 import { normalQuantile } from './normalQuantile.js';
 
+/** Share of a noise floor stated in the sheet that is taken off the edge: it may be stated a decibel too high. */
+const floorShare = 0.8;
 /** Gain assumed for a sensor resonance beyond fs/2 that the sheet names without its height. */
 const resonanceGainDb = 30;
 const imagesCounted = 32;
@@ -32,10 +34,11 @@ export function contaminationBound(
   // On a logarithmic scale, so that a wide spread never turns into a negative or absurd limit.
   const spread = Math.sqrt(Math.log(1 + edge.relativeError ** 2));
   const resonates = sheet.sensorResonanceHz !== undefined && sheet.sensorResonanceHz > sampleRateHz / 2;
-  const edgeUpperDb =
-    edge.densityDb +
-    (10 / Math.LN10) * Math.max(0, normalQuantile(confidence)) * spread +
-    (resonates ? resonanceGainDb : 0);
+  const upperDb = edge.densityDb + (10 / Math.LN10) * Math.max(0, normalQuantile(confidence)) * spread;
+  // Noise added after sampling does not fold: what the sheet states of it is no contamination.
+  const hasFloor = sheet.noiseFloorDb !== undefined && sheet.noiseFloorDb < upperDb + 1;
+  const floor = hasFloor ? floorShare * 10 ** (Math.min(sheet.noiseFloorDb ?? 0, edge.densityDb) / 10) : 0;
+  const edgeUpperDb = 10 * Math.log10(10 ** (upperDb / 10) - floor) + (resonates ? resonanceGainDb : 0);
   const filter = sheet.filter;
   const reference = filter === undefined ? null : stopbandEnvelope(filter, sampleRateHz / 2);
   const usesFilter = filter !== undefined && filter.type !== 'none' && reference !== null && reference > 0;
@@ -56,6 +59,6 @@ export function contaminationBound(
       usesFilter
         ? 'the source does not increase beyond fs/2 before the filter, and the filter is as the sheet says'
         : 'the density does not increase beyond fs/2'
-    }${resonates ? `; ${resonanceGainDb} dB added for the sensor resonance in the sheet` : ''}`,
+    }${hasFloor ? '; the noise floor stated in the sheet is taken off' : ''}${resonates ? `; ${resonanceGainDb} dB added for the sensor resonance in the sheet` : ''}`,
   };
 }

@@ -116,6 +116,14 @@ describe('judgeChannel', () => {
     expect(resonant.contaminationBoundDb ?? 0).toBeCloseTo((plain.contaminationBoundDb ?? 0) + 30, 9);
   });
 
+  it('takes a noise floor stated in the sheet off the bound, by at most 7 dB', () => {
+    const plain = judge(buildRecord()).contaminationBoundDb ?? 0;
+    const helped = judge(buildRecord(), { noiseFloorDb: -120 }).contaminationBoundDb ?? 0;
+    expect(plain - helped).toBeGreaterThan(5);
+    expect(plain - helped).toBeLessThanOrEqual(7);
+    expect(judge(buildRecord(), { noiseFloorDb: -170 }).contaminationBoundDb).toBeCloseTo(plain, 3);
+  });
+
   it('never clears more when more protection is asked for', () => {
     fc.assert(
       fc.property(fc.integer({ min: 6, max: 119 }), (protection) => {
