@@ -35,7 +35,11 @@ const environmentSchema = z.object({
   SIGN_IN_ATTEMPTS_PER_15_MIN: z.coerce.number().int().min(3).default(10),
   WORKER_CONCURRENCY: z.coerce.number().int().min(1).max(64).default(2),
   /** A capture that takes longer is stopped and, after the last try, failed. */
-  SCREENING_TIMEOUT_MS: z.coerce.number().int().min(1000).default(30 * 60_000),
+  SCREENING_TIMEOUT_MS: z.coerce
+    .number()
+    .int()
+    .min(1000)
+    .default(30 * 60_000),
   JOB_LOCK_MS: z.coerce.number().int().min(1000).default(15_000),
   RECONCILE_INTERVAL_MS: z.coerce.number().int().min(200).default(10_000),
   MAIL_INTERVAL_MS: z.coerce.number().int().min(100).default(2_000),

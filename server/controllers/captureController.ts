@@ -14,7 +14,7 @@ import type { AppDependencies } from '../AppDependencies.js';
 import type { Actor } from '../policies/Actor.js';
 import { presentCapture } from '../presenters/presentCapture.js';
 import { presentCaptureRow } from '../presenters/presentCaptureRow.js';
-import { presentSpectrum } from '../presenters/presentSpectrum.js';
+import { presentNoSpectrum, presentSpectrum } from '../presenters/presentSpectrum.js';
 import type { RouteInput } from '../routes/Route.js';
 import { CaptureEditService } from '../services/CaptureEditService.js';
 import { CaptureService } from '../services/CaptureService.js';
@@ -55,7 +55,8 @@ export function createCaptureController(deps: AppDependencies) {
     }: Input<OfCapture, z.output<typeof spectrumQuerySchema>>): Promise<SpectrumDto> => {
       const { spectrum, screen } = await captures.readSpectrum(actor, params.captureId, query);
       const { channel, unit = '', sampleRateHz } = screen;
-      return presentSpectrum(spectrum, { channel, unit, sampleRateHz }, query);
+      const of = { channel, kind: query.kind, unit, sampleRateHz };
+      return spectrum ? presentSpectrum(spectrum, of, query) : presentNoSpectrum(of);
     },
 
     file: async ({ actor, params, response }: Input<OfCapture>): Promise<void> => {

@@ -21,6 +21,7 @@ export interface SpectrumWindow {
 
 export interface SpectrumOf {
   channel: number;
+  kind: SpectrumDto['kind'];
   unit: string;
   sampleRateHz: number | null;
 }
@@ -65,5 +66,22 @@ export function presentSpectrum(spectrum: Spectrum, of: SpectrumOf, window: Spec
     frequencyHz,
     densityDb,
     medianDb,
+  };
+}
+
+/** What is told of a channel that has no such spectrum: its rate, and no bins. */
+export function presentNoSpectrum({ channel, kind, unit, sampleRateHz }: SpectrumOf): SpectrumDto {
+  const rateHz = sampleRateHz ?? 0;
+  return {
+    channel,
+    kind,
+    unit,
+    sampleRateHz: rateHz,
+    foldingFrequencyHz: rateHz / 2,
+    resolutionHz: 0,
+    segments: 0,
+    frequencyHz: [],
+    densityDb: [],
+    medianDb: null,
   };
 }

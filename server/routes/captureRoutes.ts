@@ -59,7 +59,7 @@ export function captureRoutes(deps: AppDependencies): Route[] {
       params,
       query: spectrumQuerySchema,
       success: { status: 200, schema: spectrumSchema },
-      errors: { 404: 'NOT_FOUND, NO_SPECTRUM', 409: 'NOT_SCREENED' },
+      errors: { 404: 'NOT_FOUND, NO_CHANNEL', 409: 'NOT_SCREENED' },
       handle: controller.spectrum,
     }),
     route({

@@ -78,6 +78,7 @@ export class CaptureService {
     };
   }
 
+  /** A channel that is too short or irregular has no spectrum: null. */
   async readSpectrum(actor: Actor, captureId: string, query: z.output<typeof spectrumQuerySchema>) {
     const capture = await this.load(actor, captureId);
     if (capture.state !== 'screened') {
@@ -89,10 +90,8 @@ export class CaptureService {
       select: { id: true, screen: true },
       where: { captureId, channelIndex },
     });
-    const spectrum = result && (await manager.findOneBy(Spectrum, { channelResultId: result.id, kind: query.kind }));
-    if (!spectrum) {
-      throw new NotFoundError('NO_SPECTRUM', 'This channel has no such spectrum: it may be too short or irregular.');
-    }
+    if (!result) throw new NotFoundError('NO_CHANNEL', `This capture has no channel ${channelIndex}.`);
+    const spectrum = await manager.findOneBy(Spectrum, { channelResultId: result.id, kind: query.kind });
     return { spectrum, screen: result.screen };
   }
 

@@ -1,4 +1,5 @@
 import type { ProjectRole, SessionUser, SignIn } from '@shared/schemas/account.js';
+import { useStorage } from '@vueuse/core';
 import { defineStore } from 'pinia';
 import { computed, ref } from 'vue';
 import { ApiError } from '@/api/ApiError';
@@ -8,6 +9,8 @@ import { sessionApi } from '@/api/sessionApi';
 export const useSessionStore = defineStore('session', () => {
   const user = ref<SessionUser | null>(null);
   const isKnown = ref(false);
+  /** Whether this browser may hold a session: without it the server need not be asked. No secret, only a hint. */
+  const mayBeSignedIn = useStorage('overfold.mayBeSignedIn', false);
 
   const isSignedIn = computed(() => user.value !== null);
   const isAdmin = computed(() => user.value?.isAdmin === true);
@@ -15,11 +18,15 @@ export const useSessionStore = defineStore('session', () => {
   /** Asks the server once who is signed in; nobody is an answer, no answer is an error. */
   async function load(): Promise<void> {
     if (isKnown.value) return;
+    if (!mayBeSignedIn.value) {
+      forget();
+      return;
+    }
     try {
       user.value = (await sessionApi.current()).user;
     } catch (error) {
       if (!(error instanceof ApiError) || error.status !== 401) throw error;
-      user.value = null;
+      forget();
     }
     isKnown.value = true;
   }
@@ -31,11 +38,13 @@ export const useSessionStore = defineStore('session', () => {
 
   async function signIn(credentials: SignIn): Promise<void> {
     user.value = (await sessionApi.signIn(credentials)).user;
+    mayBeSignedIn.value = true;
     isKnown.value = true;
   }
 
   function forget(): void {
     user.value = null;
+    mayBeSignedIn.value = false;
     isKnown.value = true;
   }
 
