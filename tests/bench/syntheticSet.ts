@@ -1,5 +1,7 @@
 import { mkdirSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
+import { encodeWav } from '../support/encodeWav.js';
+import { createRealFft } from '../../worker/dsp/createRealFft.js';
 
 /** Seeded generator (mulberry32): the same seed gives the same captures. */
 export function seededRandom(seed: number): () => number {
@@ -38,7 +40,7 @@ export function writeSyntheticSet(directory: string, seed: number, perFamily = 1
       const noiseLevel = 10 ** (-(20 + 40 * random()) / 20);
       const file = `captures/${made.name}${String(n).padStart(2, '0')}.wav`;
       const samples = mix(made, noiseLevel, random);
-      writeFileSync(join(directory, file), encodeWav(samples, made.sampleRateHz));
+      writeFileSync(join(directory, file), encodeWav([samples], made.sampleRateHz));
       const ratio = 10 * Math.log10(Math.max(power(made.folded), 1e-30) / power(samples));
       const label = ratio > -40 ? 'folded' : ratio < -70 ? 'clean' : 'grey';
       const tones = made.tones;
@@ -50,7 +52,7 @@ export function writeSyntheticSet(directory: string, seed: number, perFamily = 1
           'sampled',
           label,
           '',
-          '',
+          bandFoldDb(made.folded, samples),
           tones.map((tone) => tone.trueHz).join('|'),
           tones.map((tone) => tone.foldedHz).join('|'),
           tones.map(() => '1').join('|'),
@@ -145,6 +147,28 @@ function power(samples: Float64Array): number {
   return samples.reduce((sum, value) => sum + value * value, 0) / samples.length;
 }
 
+/** Folded share of ten equal bands, dB, joined with |; bands more than 80 dB below the strongest hold nothing to claim. */
+function bandFoldDb(folded: Float64Array, samples: Float64Array): string {
+  const bands = (values: Float64Array): number[] => {
+    const spectrum = Float64Array.from(createRealFft(frames).transform(values));
+    return Array.from({ length: 10 }, (_, band) => {
+      let sum = 0;
+      for (let bin = Math.ceil((band * frames) / 20); bin < ((band + 1) * frames) / 20; bin++) {
+        sum += (spectrum[2 * bin] as number) ** 2 + (spectrum[2 * bin + 1] as number) ** 2;
+      }
+      return sum;
+    });
+  };
+  const all = bands(samples);
+  const strongest = Math.max(...all);
+  return bands(folded)
+    .map((value, band) =>
+      (all[band] as number) < 1e-8 * strongest ? -120 : 10 * Math.log10(Math.max(value / (all[band] as number), 1e-12)),
+    )
+    .map((level) => level.toFixed(1))
+    .join('|');
+}
+
 function mix(made: Made, noiseLevel: number, random: () => number): Float64Array {
   const sum = made.rightful.map((value, n) => value + (made.folded[n] as number));
   const noise = gaussian(random, sum.length);
@@ -153,22 +177,4 @@ function mix(made: Made, noiseLevel: number, random: () => number): Float64Array
   const peak = noisy.reduce((top, value) => Math.max(top, Math.abs(value)), 0);
   for (const part of [noisy, made.rightful, made.folded]) part.forEach((value, n) => (part[n] = (0.8 * value) / peak));
   return noisy;
-}
-
-function encodeWav(samples: Float64Array, sampleRateHz: number): Buffer {
-  const data = Buffer.alloc(44 + 2 * samples.length);
-  data.write('RIFF', 0, 'latin1');
-  data.writeUInt32LE(36 + 2 * samples.length, 4);
-  data.write('WAVEfmt ', 8, 'latin1');
-  data.writeUInt32LE(16, 16);
-  data.writeUInt16LE(1, 20);
-  data.writeUInt16LE(1, 22);
-  data.writeUInt32LE(sampleRateHz, 24);
-  data.writeUInt32LE(2 * sampleRateHz, 28);
-  data.writeUInt16LE(2, 32);
-  data.writeUInt16LE(16, 34);
-  data.write('data', 36, 'latin1');
-  data.writeUInt32LE(2 * samples.length, 40);
-  samples.forEach((value, n) => data.writeInt16LE(Math.round(32767 * value), 44 + 2 * n));
-  return data;
 }

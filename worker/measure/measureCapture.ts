@@ -15,6 +15,8 @@ export interface MeasureOptions {
 }
 
 const blockFrames = 16_384;
+/** Fewer survey segments than this are no spectrum. */
+const leastSegments = 4;
 
 /**
  * Measures every channel of a capture in three passes over the source: integrity, spectra (without the damaged stretches),
@@ -68,13 +70,19 @@ function createPasses(source: SampleSource, { onProgress, signal }: MeasureOptio
 
 function addSpectra(source: SampleSource, rateHz: number, parts: ChannelParts[], pass: Pass): void {
   const plan = planSegments(source.frameCount, source.channelCount);
-  const meters = parts.map((part) => {
-    part.spectra = new SpectrumMeter(plan, rateHz, avoidedSpans(source, rateHz, part));
-    return part.spectra;
-  });
-  pass(1, (channels, frames) =>
-    meters.forEach((meter, c) => meter.push(holdLastFinite(channels[c] as Float64Array, frames), frames)),
-  );
+  const makeMeters = (avoided: FrameSpan[][]): SpectrumMeter[] => {
+    const made = avoided.map((spans) => new SpectrumMeter(plan, rateHz, spans));
+    pass(1, (channels, frames) =>
+      made.forEach((meter, c) => meter.push(holdLastFinite(channels[c] as Float64Array, frames), frames)),
+    );
+    return made;
+  };
+  const avoided = parts.map((part) => avoidedSpans(source, rateHz, part));
+  let meters = makeMeters(avoided);
+  // Damage sprinkled over the whole capture leaves no segment: then it stays in, and the integrity findings say so.
+  const isStarved = meters.map((meter, c) => meter.survey.segments < leastSegments && (avoided[c]?.length ?? 0) > 0);
+  if (isStarved.includes(true)) meters = makeMeters(avoided.map((spans, c) => (isStarved[c] === true ? [] : spans)));
+  parts.forEach((part, c) => (part.spectra = meters[c] ?? null));
   addTones(source, rateHz, parts, meters, pass);
 }
 

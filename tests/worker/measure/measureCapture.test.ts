@@ -93,6 +93,13 @@ describe('measureCapture', () => {
     expect(Math.abs((record.edge?.densityDb ?? 0) - clean)).toBeLessThan(3);
   });
 
+  it('still makes spectra where damage is sprinkled over the whole capture', () => {
+    const sprinkled = filtered.map((value, n) => (n % 97 === 0 ? Number.NaN : value));
+    const record = measure(sprinkled);
+    expect(record.profile).not.toBeNull();
+    expect(judge(record).verdict).toBe('unproven');
+  });
+
   const nothing: [string, Float64Array, number | null, string][] = [
     ['a constant', new Float64Array(4000).fill(0.25), fs, 'silent'],
     ['silence', new Float64Array(4000), fs, 'silent'],
