@@ -4,7 +4,7 @@ import type { Spectrum } from '../../../server/entities/index.js';
 import { presentSpectrum, type SpectrumWindow } from '../../../server/presenters/presentSpectrum.js';
 
 const toBytes = (values: number[]): Buffer => Buffer.from(new Float32Array(values).buffer);
-const of = { channel: 0, kind: 'survey' as const, kind: 'survey' as const, unit: 'g', sampleRateHz: 8 };
+const of = { channel: 0, kind: 'survey' as const, unit: 'g', sampleRateHz: 8 };
 
 function present(mean: number[], window: Partial<SpectrumWindow> = {}, median: number[] | null = null) {
   const spectrum = { kind: 'survey', resolutionHz: 0.5, segments: 4 } as Spectrum;
