@@ -44,13 +44,16 @@ export function judgeIntegrity(record: MeasurementRecord, thresholds: Thresholds
       value: level?.mean ?? 0,
     });
   }
-  if (integrity.notFiniteCount > 0) {
-    const share = integrity.notFiniteCount / Math.max(1, samples);
+  // Missing rows of a uniform grid are read as no numbers too; they have a finding of their own.
+  const missingRows = Math.round((record.timeStamps?.missingShare ?? 0) * samples);
+  const notFiniteCount = integrity.notFiniteCount - missingRows;
+  if (notFiniteCount > 0) {
+    const share = notFiniteCount / Math.max(1, samples);
     add(
       'notFinite',
       share > thresholds.maxMissingShare || level === null ? 'unproven' : 'limit',
-      `${integrity.notFiniteCount} of ${samples} samples are no numbers (${formatPercent(share)}); those stretches are left out of the spectra.`,
-      { notFiniteCount: integrity.notFiniteCount, share },
+      `${notFiniteCount} of ${samples} samples are no numbers (${formatPercent(share)}); those stretches are left out of the spectra.`,
+      { notFiniteCount, share },
     );
   }
   if (integrity.clippedCount > 0) {
