@@ -80,8 +80,11 @@ export function buildSpectrumAnnotations(model: SpectrumModel, colors: ChartColo
       label: {
         display: true,
         content: 'guard band',
-        position: { x: 'center', y: 'start' },
+        drawTime: 'afterDatasetsDraw',
+        position: { x: 'center', y: 'center' },
         color: colors.caution,
+        backgroundColor: withAlpha(colors.paper, 0.85),
+        padding: 3,
         font: { size: 11, weight: 'normal' },
       },
     };
@@ -102,7 +105,7 @@ export function buildSpectrumAnnotations(model: SpectrumModel, colors: ChartColo
       borderColor: colors.protected,
       borderWidth: 2,
       borderDash: [8, 3],
-      label: label(`clear to ${formatFrequency(screen.clearToHz)}`, colors.protected, colors.paper, 'start', 22),
+      label: label(`clear to ${formatFrequency(screen.clearToHz)}`, colors.protected, colors.paper, 'start', -24),
     };
   }
   if (screen.contaminationBoundDb !== null) {
