@@ -56,7 +56,8 @@ describe.each([
     const found: Record<string, string[]> = {};
     const examine = async (path: string): Promise<void> => {
       await page.getByRole('heading', { level: 1 }).first().waitFor();
-      await page.waitForLoadState('networkidle');
+      // What is still loading says so.
+      await page.waitForFunction(() => !document.querySelector('[role="status"] [role="progressbar"]'));
       const violations = await findAccessibilityViolations(page);
       if (violations.length > 0) found[path] = violations;
       const scrollsSideways = await page.evaluate(

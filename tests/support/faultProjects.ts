@@ -22,6 +22,7 @@ export const faultProjects = (captureCount: number): DemoProject[] => [
       'ines@marram.example': ['analyst'],
       'tomas@marram.example': ['reviewer'],
       'yara@marram.example': ['qaManager'],
+      'ove@marram.example': ['qaManager'],
     },
     uploaderEmail: 'ines@marram.example',
     thresholds: null,
