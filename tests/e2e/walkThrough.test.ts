@@ -1,5 +1,4 @@
 import { afterAll, afterEach, beforeAll, describe, expect, it } from 'vitest';
-import { pumpHallOne } from '../../server/demo/batches/pumpHallOne.js';
 import { pumpHallTwo } from '../../server/demo/batches/pumpHallTwo.js';
 import { SeededRandom } from '../../server/demo/signals/SeededRandom.js';
 import { browserProjects } from '../support/browserProjects.js';
@@ -28,8 +27,8 @@ afterEach(async () => {
 });
 
 /** A file of the demo's signals with other random numbers: bytes that this installation has not seen. */
-function freshFile(batch: typeof pumpHallOne, fileName: string, name: string) {
-  const capture = batch.captures.find((entry) => entry.fileName === fileName);
+function freshFile(fileName: string, name: string) {
+  const capture = pumpHallTwo.captures.find((entry) => entry.fileName === fileName);
   if (!capture) throw new Error(`The demo has no ${fileName}.`);
   return { name, mimeType: 'audio/wav', buffer: capture.make(new SeededRandom(4711)) };
 }
@@ -49,13 +48,13 @@ describe('the way through the product', () => {
       page.getByRole('button', { name: 'Choose files' }).click(),
     ]);
     await chooser.setFiles([
-      freshFile(pumpHallOne, 'pump-1/drive-end.wav', 'evening-1.wav'),
-      freshFile(pumpHallTwo, 'pump-6/drive-end.wav', 'evening-2.wav'),
+      freshFile('pump-8/filter-in.wav', 'evening-1.wav'),
+      freshFile('pump-6/drive-end.wav', 'evening-2.wav'),
       { name: 'letter.wav', mimeType: 'audio/wav', buffer: Buffer.from('%PDF-1.7 this is no recording') },
     ]);
     const row = (name: string) => page.getByRole('row').filter({ hasText: name });
     await row('evening-1.wav')
-      .getByText(/5120 Hz/)
+      .getByText(/2048 Hz/)
       .waitFor();
     await row('letter.wav').getByText('Refused').waitFor();
     await page.getByRole('button', { name: /Upload and screen 2/ }).click();
