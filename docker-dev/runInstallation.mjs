@@ -3,11 +3,11 @@ import { mkdirSync } from 'node:fs';
 import { join } from 'node:path';
 import { startBackgroundServices } from './services/backgroundServices.mjs';
 import { ensureDebianPackages } from './services/debianPackages.mjs';
-import { ensureNpmPackages } from './services/npmPackages.mjs';
 import { requireFreePort } from './services/ports.mjs';
 import { Processes } from './services/Processes.mjs';
 import { addChild, clearRunning, readRunning, writeRunning } from './services/runFile.mjs';
 import { fail, say } from './services/say.mjs';
+import { setUpPackages } from './services/setUpOnce.mjs';
 import { appEnvironment, projectDir, readSettings } from './services/settings.mjs';
 
 function checkNode() {
@@ -78,7 +78,7 @@ export async function runInstallation(launch, { extraPorts = () => [] } = {}) {
   }
   try {
     writeRunning(settings.stateDir, settings.port);
-    ensureNpmPackages();
+    await setUpPackages();
     ensureDebianPackages(['postgresql', 'redis-server']);
     mkdirSync(settings.mailDir, { recursive: true });
     say('starting PostgreSQL and Redis');

@@ -1,15 +1,15 @@
 // npm start: sets up everything that is missing, then runs the installation in this folder until it is stopped.
 import { join } from 'node:path';
-import { ensureBuild } from './services/build.mjs';
 import { say } from './services/say.mjs';
 import { projectDir } from './services/settings.mjs';
+import { setUpBuild } from './services/setUpOnce.mjs';
 import { waitForHealth } from './services/waitForHealth.mjs';
 import { runInstallation, runToEnd } from './runInstallation.mjs';
 
 const built = (...path) => join(projectDir, 'dist', 'node', ...path);
 
 await runInstallation(async ({ settings, processes, env }) => {
-  await ensureBuild();
+  await setUpBuild();
   runToEnd('bringing the database up to date', ['node', built('server', 'migrate.js')], env);
   if (settings.isDemo) runToEnd('filling in the demo', ['node', built('server', 'demo', 'seed.js')], env);
   processes.start(

@@ -4,13 +4,12 @@ import { spawn } from 'node:child_process';
 import { chmodSync, existsSync, mkdtempSync, readFileSync, rmSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
-import { ensureBuild } from './services/build.mjs';
 import { startBackgroundServices } from './services/backgroundServices.mjs';
 import { ensureDebianPackages } from './services/debianPackages.mjs';
-import { ensureNpmPackages } from './services/npmPackages.mjs';
 import { findFreePorts } from './services/ports.mjs';
 import { say } from './services/say.mjs';
 import { projectDir } from './services/settings.mjs';
+import { setUpBuild, setUpPackages } from './services/setUpOnce.mjs';
 
 const vitestProjects = ['node', 'client', 'integration', 'system'];
 
@@ -55,9 +54,9 @@ for (const signal of ['SIGINT', 'SIGTERM', 'SIGHUP']) {
 let exitCode = 0;
 const totals = { passed: 0, failed: 0, skipped: 0 };
 try {
-  ensureNpmPackages();
+  await setUpPackages();
   ensureDebianPackages(['postgresql', 'redis-server', 'chromium']);
-  await ensureBuild();
+  await setUpBuild();
   say('starting PostgreSQL and Redis for the tests');
   const [postgresPort, redisPort] = await findFreePorts(2);
   services = await startBackgroundServices({ stateDir: folder, postgresPort, redisPort, isThrowAway: true });
