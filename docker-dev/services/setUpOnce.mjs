@@ -1,4 +1,4 @@
-import { mkdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
+import { existsSync, mkdirSync, readFileSync, rmSync, statSync, writeFileSync } from 'node:fs';
 import { join } from 'node:path';
 import { setTimeout as pause } from 'node:timers/promises';
 import { ensureBuild } from './build.mjs';
@@ -7,6 +7,7 @@ import { identify, isStillThere } from './processIdentity.mjs';
 import { projectDir } from './settings.mjs';
 
 const lockDir = join(projectDir, '.overfold');
+const unreadableLimitMs = 5_000;
 const lockFile = join(lockDir, 'setup.lock');
 
 function tryLock() {
@@ -23,8 +24,8 @@ function isHeld() {
   try {
     return isStillThere(JSON.parse(readFileSync(lockFile, 'utf8')));
   } catch {
-    // Just released, or being written this very moment: the next try tells.
-    return true;
+    // Just released, or being written this very moment; a file that stays unreadable is what a crash left.
+    return existsSync(lockFile) && Date.now() - statSync(lockFile).mtimeMs < unreadableLimitMs;
   }
 }
 
