@@ -1,6 +1,6 @@
 import { Matrix, solve } from 'ml-matrix';
 import { blockResponse } from './blockResponse.js';
-import type { RefinedTone } from './refineTones.js';
+import type { RefinedTone } from './RefinedTone.js';
 import type { ToneDemodulator } from './ToneDemodulator.js';
 
 /** Tones closer than this many 1/T are fitted together. */

@@ -1,15 +1,7 @@
 import { blockResponse, type Complex } from './blockResponse.js';
 import { fitToneGroup } from './fitToneGroup.js';
+import type { RefinedTone } from './RefinedTone.js';
 import type { ToneDemodulator } from './ToneDemodulator.js';
-
-export interface RefinedTone {
-  /** Offset from the demodulator's frequency, rad a sample. */
-  delta: number;
-  /** x[n] contains amplitude·exp(iωn) and its conjugate, phase at the demodulator's origin. */
-  amplitude: Complex;
-  /** Blocks of the demodulator less every other tone: interleaved real and imaginary parts. */
-  residual: Float64Array;
-}
 
 /**
  * Maximum-likelihood frequencies and amplitudes of several tones from their demodulated blocks: cyclic relaxation (each

@@ -1,4 +1,4 @@
-import type { RefinedTone } from './refineTones.js';
+import type { RefinedTone } from './RefinedTone.js';
 import type { ToneDemodulator } from './ToneDemodulator.js';
 
 const parts = 8;

@@ -1,11 +1,12 @@
-import { type RefinedTone, refineTones } from '../dsp/refineTones.js';
+import type { RefinedTone } from '../dsp/RefinedTone.js';
+import { refineTones } from '../dsp/refineTones.js';
 import { type SteadyTone, subtractTones } from '../dsp/subtractTones.js';
 import { ToneDemodulator } from '../dsp/ToneDemodulator.js';
 import type { SampleSource } from '../readers/SampleSource.js';
 import type { ChannelParts } from './buildMeasurement.js';
 import { holdLastFinite } from './IntegrityMeter.js';
-import type { Pass } from './measureCapture.js';
 import { measureTones } from './measureTones.js';
+import type { Pass } from './Pass.js';
 import { pickCloseTones } from './pickCloseTones.js';
 import { type PickedTone, pickTones } from './pickTones.js';
 import type { SpectrumMeter } from './SpectrumMeter.js';

@@ -6,6 +6,7 @@ import { buildMeasurement, type ChannelParts } from './buildMeasurement.js';
 import type { ChannelMeasurement } from './ChannelMeasurement.js';
 import { type FrameSpan, holdLastFinite, IntegrityMeter } from './IntegrityMeter.js';
 import { measureIrregular } from './measureIrregular.js';
+import type { Pass } from './Pass.js';
 import { leastSamples, planSegments } from './planSegments.js';
 import { SpectrumMeter } from './SpectrumMeter.js';
 
@@ -48,10 +49,6 @@ export function measureCapture(
   options.onProgress?.(1);
   return parts.map((part, channel) => buildMeasurement(source, part, channel));
 }
-
-type OnBlock = (channels: Float64Array[], frames: number, firstFrame: number) => void;
-/** Reads the source once more; `index` 0 … 2 places the pass in the progress. */
-export type Pass = (index: number, onBlock: OnBlock) => void;
 
 function createPasses(source: SampleSource, { onProgress, signal }: MeasureOptions): Pass {
   let reached = 0;

@@ -1,7 +1,7 @@
 import type { ToneMeasurement } from '../../shared/screening/MeasurementRecord.js';
 import { cramerRaoHz } from '../dsp/cramerRaoHz.js';
 import { decibels } from '../dsp/decibels.js';
-import type { RefinedTone } from '../dsp/refineTones.js';
+import type { RefinedTone } from '../dsp/RefinedTone.js';
 import type { ToneDemodulator } from '../dsp/ToneDemodulator.js';
 import { toneWander } from '../dsp/toneWander.js';
 import type { PickedTone } from './pickTones.js';

@@ -1,0 +1,10 @@
+import type { Complex } from './blockResponse.js';
+
+export interface RefinedTone {
+  /** Offset from the demodulator's frequency, rad a sample. */
+  delta: number;
+  /** x[n] contains amplitude·exp(iωn) and its conjugate, phase at the demodulator's origin. */
+  amplitude: Complex;
+  /** Blocks of the demodulator less every other tone: interleaved real and imaginary parts. */
+  residual: Float64Array;
+}
