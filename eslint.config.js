@@ -10,7 +10,11 @@ function mayNotImport(folders) {
   return {
     'no-restricted-imports': [
       'error',
-      { patterns: [{ regex: `^(\\.\\./)+(${folders.join('|')})/|^@/(${folders.join('|')})/`, message: 'Imports flow one way.' }] },
+      {
+        patterns: [
+          { regex: `^(\\.\\./)+(${folders.join('|')})/|^@/(${folders.join('|')})/`, message: 'Imports flow one way.' },
+        ],
+      },
     ],
   };
 }
@@ -30,7 +34,10 @@ export default defineConfig(
       '@typescript-eslint/no-extraneous-class': ['error', { allowWithDecorator: true, allowEmpty: true }],
       '@typescript-eslint/ban-ts-comment': ['error', { 'ts-expect-error': 'allow-with-description' }],
       '@typescript-eslint/no-unused-vars': ['error', { argsIgnorePattern: '^_', varsIgnorePattern: '^_' }],
-      '@typescript-eslint/consistent-type-imports': ['error', { fixStyle: 'inline-type-imports', prefer: 'type-imports' }],
+      '@typescript-eslint/consistent-type-imports': [
+        'error',
+        { fixStyle: 'inline-type-imports', prefer: 'type-imports' },
+      ],
       'vue/no-v-html': 'error',
       'vue/block-order': ['error', { order: ['script', 'template', 'style'] }],
     },
@@ -56,5 +63,8 @@ export default defineConfig(
       ],
     },
   },
-  { files: ['docker-dev/**', 'tests/bench/**', 'worker/screen.ts', 'server/user.ts', 'server/migrate.ts'], rules: { 'no-console': 'off' } },
+  {
+    files: ['docker-dev/**', 'tests/bench/**', 'worker/screen.ts', 'server/user.ts', 'server/migrate.ts'],
+    rules: { 'no-console': 'off' },
+  },
 );
