@@ -83,7 +83,6 @@ export function buildSpectrumAnnotations(model: SpectrumModel, colors: ChartColo
         drawTime: 'afterDatasetsDraw',
         position: { x: 'center', y: 'center' },
         color: colors.caution,
-        backgroundColor: withAlpha(colors.paper, 0.85),
         padding: 3,
         font: { size: 11, weight: 'normal' },
       },
