@@ -59,6 +59,10 @@ export interface IntegrityMeasurement {
   missingShare: number;
   dropoutCount: number;
   dropouts: SpanS[];
+  /** Stretches at rest: silence at the start, at the end, or in pauses into which the signal fades. The longest first. */
+  pauses: SpanS[];
+  pauseCount: number;
+  pauseShare: number;
   offsetShare: number;
   /** The step between neighbouring codes really used; null where none shows. */
   quantum: number | null;

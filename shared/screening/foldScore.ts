@@ -18,14 +18,24 @@ export interface FoldScore {
   score: number;
 }
 
+const priorLogOdds = Math.log(foldPrior / (1 - foldPrior));
+/** No evidence here is worth more certainty than this. */
+const largestScore = 1 - 1e-9;
+
 /**
+ * A quiet band edge speaks against broadband folding, not against a tone that stands above it: a tone shown to be folded,
+ * strong enough to matter, is a second, separate way to be folded, and the two are joined as such
+ * (1 − product of the probabilities of "not folded", Pearl 1988, "noisy or").
  * @param toneRatio log-likelihood ratio of the evidence in tones, tracks and moved tones; 0 for none
+ * @param shownConfidence confidence that a tone above −40 dB of the total and below 0.9·fs/2 is folded; 0 for none
  */
-export function foldScore(features: FoldFeatures | null, toneRatio: number): FoldScore | null {
+export function foldScore(features: FoldFeatures | null, toneRatio: number, shownConfidence: number): FoldScore | null {
   if (features === null && toneRatio === 0) return null;
-  const logLikelihoodRatio = (features === null ? 0 : edgeRatio(features)) + toneRatio;
-  const logOdds = logLikelihoodRatio + Math.log(foldPrior / (1 - foldPrior));
-  return { logLikelihoodRatio, score: 1 / (1 + Math.exp(-logOdds)) };
+  const ratio = (features === null ? 0 : edgeRatio(features)) + toneRatio;
+  if (shownConfidence === 0) return { logLikelihoodRatio: ratio, score: 1 / (1 + Math.exp(-ratio - priorLogOdds)) };
+  const notFolded = (1 - shownConfidence) / (1 + Math.exp(ratio + priorLogOdds));
+  const score = Math.min(largestScore, 1 - notFolded);
+  return { logLikelihoodRatio: Math.log(score / (1 - score)) - priorLogOdds, score };
 }
 
 export function edgeRatio(features: FoldFeatures): number {

@@ -7,14 +7,18 @@ export function formatDb(levelDb: number): string {
   return `${levelDb.toFixed(1)} dB`;
 }
 
+/** Smaller shares and chances are not told apart: none of them is exactly nothing. */
+const leastPercent = 0.01;
+
 export function formatPercent(share: number): string {
   const percent = 100 * share;
+  if (percent < leastPercent) return `less than ${leastPercent} %`;
   return `${percent >= 10 ? percent.toFixed(0) : percent >= 0.1 ? percent.toFixed(1) : percent.toPrecision(1)} %`;
 }
 
 export function formatSeconds(seconds: number): string {
-  if (seconds < 1e-3) return `${significant(1e6 * seconds)} µs`;
-  return seconds < 1 ? `${significant(1000 * seconds)} ms` : `${significant(seconds)} s`;
+  if (seconds > 0 && seconds < 1e-3) return `${significant(1e6 * seconds)} µs`;
+  return seconds > 0 && seconds < 1 ? `${significant(1000 * seconds)} ms` : `${significant(seconds)} s`;
 }
 
 function significant(value: number): string {

@@ -30,7 +30,7 @@ export function judgeChannel(
   const tones =
     record.irregular !== null ? judgeIrregular(record.irregular, thresholds) : judgeTones(record, thresholds, sheet);
   const features = isIrregular ? null : foldFeatures(record);
-  const score = foldScore(features, tones.logRatio);
+  const score = foldScore(features, tones.logRatio, tones.shownConfidence);
   const bandEdge = bandEdgeFigures(record, thresholds, band, sheet.noiseFloorDb);
   const bound = isIrregular ? null : contaminationBound(record, thresholds.confidence, sheet);
   const findings: Finding[] = [...tones.findings, ...integrity];

@@ -29,9 +29,11 @@ export function judgeIntegrity(record: MeasurementRecord, thresholds: Thresholds
       { samples },
     );
   }
-  const tooShort = durationS !== null && durationS < thresholds.minDurationS;
+  // Pauses are no signal: what is judged is what remains.
+  const signalS = durationS === null ? null : durationS * (1 - integrity.pauseShare);
+  const tooShort = signalS !== null && signalS < thresholds.minDurationS;
   if (obstacles.includes('tooFewSamples') || tooShort) {
-    const length = durationS === null ? `${samples} samples` : `${formatSeconds(durationS)} (${samples} samples)`;
+    const length = signalS === null ? `${samples} samples` : `${formatSeconds(signalS)} of signal (${samples} samples)`;
     add(
       'tooShort',
       'unproven',
@@ -77,9 +79,18 @@ export function judgeIntegrity(record: MeasurementRecord, thresholds: Thresholds
     add(
       'dropout',
       over ? 'unproven' : 'limit',
-      `${integrity.dropoutCount} stretches hold one value far longer than the signal explains (${formatPercent(integrity.missingShare)} of the samples)${spansText(integrity.dropouts)}; they are left out of the spectra.`,
+      `${counted(integrity.dropoutCount, 'stretch holds', 'stretches hold')} one value far longer than the signal explains (${formatPercent(integrity.missingShare)} of the samples)${spansText(integrity.dropouts)}; left out of the spectra.`,
       { dropoutCount: integrity.dropoutCount, missingShare: integrity.missingShare, limit: thresholds.maxMissingShare },
       firstSpan(integrity.dropouts),
+    );
+  }
+  if (integrity.pauseCount > 0) {
+    add(
+      'silent',
+      'note',
+      `The signal rests in ${counted(integrity.pauseCount, 'stretch', 'stretches')} (${formatPercent(integrity.pauseShare)} of the samples)${spansText(integrity.pauses)}: silence at the start or the end, or a pause into which it fades. Left out of the spectra.`,
+      { pauseCount: integrity.pauseCount, pauseShare: integrity.pauseShare },
+      { ...firstSpan(integrity.pauses), method: 'runs of one value, by the steps into and out of them' },
     );
   }
   if (integrity.offsetShare > largestOffsetShare && !obstacles.includes('silent')) {
@@ -180,6 +191,8 @@ function judgeStamps({ timeStamps }: MeasurementRecord, thresholds: Thresholds, 
     );
   }
 }
+
+const counted = (count: number, one: string, many: string): string => `${count} ${count === 1 ? one : many}`;
 
 function spansText(spans: SpanS[]): string {
   if (spans.length === 0) return '';

@@ -14,7 +14,7 @@ const reasons: Record<IrregularMeasurement['limitedBy'], string> = {
 export function judgeIrregular(
   measured: IrregularMeasurement,
   thresholds: Thresholds,
-): { tones: Tone[]; findings: Finding[]; logRatio: number } {
+): { tones: Tone[]; findings: Finding[]; logRatio: number; shownConfidence: number } {
   const halfHz = measured.meanRateHz / 2;
   const tones: Tone[] = measured.tones
     .filter((tone) => tone.standsOutDb >= thresholds.toneStandsOutDb)
@@ -64,7 +64,7 @@ export function judgeIrregular(
     method: 'generalised Lomb-Scargle periodogram',
     source: 'Eyer & Bartholdi 1999; Zechmeister & Kürster 2009',
   });
-  return { tones, findings, logRatio: irregularRatio(tones, halfHz) };
+  return { tones, findings, logRatio: irregularRatio(tones, halfHz), shownConfidence: 0 };
 }
 
 /** Power beyond half the mean rate against the rest, on the scale of the other evidence. */

@@ -13,6 +13,8 @@ export interface TonesJudgement {
   findings: Finding[];
   /** Log-likelihood ratio of the tone evidence for folding, 0 without any. */
   logRatio: number;
+  /** Best confidence of a shown folded tone that carries more than −40 dB of the total below 0.9·fs/2; 0 for none. */
+  shownConfidence: number;
 }
 
 /** Relative error of a frequency written into a sheet: speeds and supplies are known to about this. */
@@ -21,11 +23,16 @@ const candidatesListed = 4;
 /** Below the total power by the protection and this much more, a folded tone is no reason to call a capture folded. */
 const immaterialBelowDb = 25;
 const largestLogRatio = 6;
+/** What the fold score is a probability of: folded energy over this share of the total, below this part of the band. */
+const labelledShareDb = -40;
+const labelledBand = 0.9;
 
 /** Explains each tone that stands out: stated source, harmonic, supply, folded source, folded member of a family, or nothing. */
 export function judgeTones(record: MeasurementRecord, thresholds: Thresholds, sheet: AcquisitionSheet): TonesJudgement {
   const { sampleRateHz, durationS } = record;
-  if (sampleRateHz === null || durationS === null || durationS === 0) return { tones: [], findings: [], logRatio: 0 };
+  if (sampleRateHz === null || durationS === null || durationS === 0) {
+    return { tones: [], findings: [], logRatio: 0, shownConfidence: 0 };
+  }
   const binHz = 1 / durationS;
   const measured = record.tones.filter((tone) => tone.standsOutDb >= thresholds.toneStandsOutDb);
   const reachHz = sheet.sensorBandHz ?? 2 * sampleRateHz;
@@ -78,7 +85,11 @@ export function judgeTones(record: MeasurementRecord, thresholds: Thresholds, sh
       const finding = foldedToneFinding(tone, sampleRateHz);
       return isMaterial(tone) ? finding : { ...finding, severity: 'limit' };
     });
-  return { tones, findings: [...findings, ...sourcesAtFold(sheet, sampleRateHz)], logRatio };
+  const shownConfidence = folded
+    .filter((tone) => tone.confidence >= thresholds.confidence)
+    .filter((tone) => tone.levelDb > totalDb + labelledShareDb && tone.frequencyHz < (labelledBand * sampleRateHz) / 2)
+    .reduce((best, tone) => Math.max(best, tone.confidence), 0);
+  return { tones, findings: [...findings, ...sourcesAtFold(sheet, sampleRateHz)], logRatio, shownConfidence };
 }
 
 function statedFundamentals(

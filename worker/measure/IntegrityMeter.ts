@@ -2,6 +2,7 @@ import type { LevelMeasurement } from '../../shared/screening/MeasurementRecord.
 import { detectQuantum } from '../dsp/detectQuantum.js';
 import { Envelope } from '../dsp/Envelope.js';
 import { findClipping } from '../dsp/findClipping.js';
+import { isPause } from '../dsp/isPause.js';
 import { findDropouts } from '../dsp/findDropouts.js';
 import { LevelAccumulator } from '../dsp/LevelAccumulator.js';
 import { RunAccumulator } from '../dsp/RunAccumulator.js';
@@ -26,6 +27,7 @@ export interface IntegrityResult {
   clippedAt: number[];
   dropoutCount: number;
   dropouts: FrameSpan[];
+  pauses: FrameSpan[];
   quantum: number | null;
 }
 
@@ -67,13 +69,16 @@ export class IntegrityMeter {
     const quantum = detectQuantum(this.sampler.values);
     const clipping = findClipping(this.runs, this.envelope, quantum);
     const clippedAt = clipping.plateaus.map((plateau) => plateau.value);
-    const dropouts = findDropouts(this.runs, this.level.count, new Set(clippedAt));
+    const level = this.level.result();
+    const held = findDropouts(this.runs, this.level.count, new Set(clippedAt));
+    const pauses = held.filter((run) => level !== null && isPause(run, level));
+    const dropouts = held.filter((run) => !pauses.includes(run));
     const span = (run: { firstFrame: number; length: number }): FrameSpan => ({
       first: run.firstFrame,
       last: run.firstFrame + run.length - 1,
     });
     return {
-      level: this.level.result(),
+      level,
       samples: this.level.count + this.notFiniteCount,
       notFiniteCount: this.notFiniteCount,
       notFiniteSpans: this.notFiniteSpans,
@@ -84,6 +89,7 @@ export class IntegrityMeter {
       clippedAt,
       dropoutCount: dropouts.reduce((sum, run) => sum + run.length, 0),
       dropouts: dropouts.map(span),
+      pauses: pauses.map(span),
       quantum,
     };
   }

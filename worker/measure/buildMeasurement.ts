@@ -89,6 +89,8 @@ export function buildMeasurement(source: SampleSource, parts: ChannelParts, chan
   };
 }
 
+const frameCount = (spans: FrameSpan[]): number => spans.reduce((sum, { first, last }) => sum + last - first + 1, 0);
+
 function measureIntegrity(source: SampleSource, result: IntegrityResult): IntegrityMeasurement {
   const rateHz = source.sampleRateHz;
   // Without a rate frames have no time.
@@ -113,6 +115,9 @@ function measureIntegrity(source: SampleSource, result: IntegrityResult): Integr
     missingShare: samples === 0 ? 0 : Math.max(missing / samples, source.timeStamps?.missingShare ?? 0),
     dropoutCount: result.dropouts.length,
     dropouts: toSpans(result.dropouts),
+    pauses: toSpans(result.pauses),
+    pauseCount: result.pauses.length,
+    pauseShare: samples === 0 ? 0 : frameCount(result.pauses) / samples,
     offsetShare: level === null || peak === 0 ? 0 : Math.abs(level.mean) / peak,
     quantum,
     usedBits: quantum === null || range === 0 ? null : Math.log2(range / quantum + 1),

@@ -84,7 +84,7 @@ function addSpectra(source: SampleSource, rateHz: number, parts: ChannelParts[],
 }
 
 /**
- * Stretches that spectra leave out: dropouts, values that are no numbers, gaps, and clipping; as long as half of
+ * Stretches that spectra leave out: dropouts, pauses, values that are no numbers, gaps, and clipping; as long as half of
  * the capture remains, otherwise nothing is left out and the damage is only reported.
  */
 function avoidedSpans(source: SampleSource, rateHz: number, { integrity }: ChannelParts): FrameSpan[] {
@@ -92,7 +92,13 @@ function avoidedSpans(source: SampleSource, rateHz: number, { integrity }: Chann
     first: Math.floor(fromS * rateHz),
     last: Math.ceil(toS * rateHz),
   }));
-  const spans = [...integrity.dropouts, ...integrity.notFiniteSpans, ...integrity.clippedStretches, ...gaps];
+  const spans = [
+    ...integrity.dropouts,
+    ...integrity.pauses,
+    ...integrity.notFiniteSpans,
+    ...integrity.clippedStretches,
+    ...gaps,
+  ];
   const share = spans.reduce((sum, span) => sum + span.last - span.first + 1, 0) / Math.max(1, source.frameCount);
   return share > 0.4 ? [] : spans;
 }

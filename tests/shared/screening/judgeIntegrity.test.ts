@@ -59,6 +59,17 @@ describe('judgeIntegrity', () => {
     });
   });
 
+  it('notes pauses, and calls a capture too short of which they leave too little signal', () => {
+    const pauses = [{ fromS: 0, toS: 2 }];
+    expect(kinds(buildRecord({ integrity: { ...base, pauseCount: 1, pauseShare: 0.2, pauses } }))).toEqual({
+      silent: 'note',
+    });
+    expect(kinds(buildRecord({ integrity: { ...base, pauseCount: 1, pauseShare: 0.97, pauses } }))).toEqual({
+      tooShort: 'unproven',
+      silent: 'note',
+    });
+  });
+
   it('says when the companion named in the sheet was not at hand', () => {
     expect(kinds(buildRecord(), { companion: 'b.wav' })).toEqual({ companionMissing: 'note' });
     const companion = { name: 'b.wav', sampleRateHz: 2500, durationS: 10, tones: [] };
