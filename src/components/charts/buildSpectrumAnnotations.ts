@@ -1,3 +1,4 @@
+import { zoneOf } from '@shared/screening/foldArithmetic.js';
 import type { AnnotationOptions } from 'chartjs-plugin-annotation';
 import { formatFrequency } from '@/utils/formatFrequency';
 import type { SpectrumModel } from './SpectrumModel';
@@ -14,10 +15,6 @@ const label = (content: string, color: string, paper: string, position: 'start' 
   font: { size: 11, weight: 'normal' as const },
   padding: 3,
 });
-
-/** Zone of a true frequency: the n-th stretch of width fs/2. */
-export const zoneOf = (frequencyHz: number, sampleRateHz: number): number =>
-  Math.floor((2 * frequencyHz) / sampleRateHz) + 1;
 
 const labelledFoldedTones = 6;
 
@@ -42,7 +39,7 @@ function foldedToneAnnotations(
           borderWidth: 1,
           borderDash: [3, 4],
           label: label(
-            `belongs at ${formatFrequency(trueHz)} (zone ${zoneOf(trueHz, spectrum.sampleRateHz)}) →`,
+            `belongs at ${formatFrequency(trueHz)} (zone ${zoneOf(trueHz, spectrum.sampleRateHz).number}) →`,
             colors.folded,
             colors.paper,
             'end',

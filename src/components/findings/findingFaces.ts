@@ -1,11 +1,5 @@
 import type { FindingKind, FindingSeverity } from '@shared/schemas/screening.js';
-import {
-  mdiAlertOutline,
-  mdiArrowCollapseLeft,
-  mdiHelpCircleOutline,
-  mdiInformationOutline,
-  mdiVectorPolylineMinus,
-} from '@mdi/js';
+import { mdiArrowCollapseLeft, mdiHelpCircleOutline, mdiInformationOutline, mdiVectorPolylineMinus } from '@mdi/js';
 
 export const findingLabels: Record<FindingKind, string> = {
   foldedTone: 'Folded tone',
@@ -48,5 +42,3 @@ export const severityFaces: Record<FindingSeverity, SeverityFace> = {
   limit: { label: 'Limits the claim', icon: mdiArrowCollapseLeft, color: 'caution' },
   note: { label: 'Note', icon: mdiInformationOutline, color: 'secondary' },
 };
-
-export const failedIcon = mdiAlertOutline;

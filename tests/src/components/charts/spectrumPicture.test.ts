@@ -1,6 +1,6 @@
 import type { Tone } from '@shared/schemas/screening.js';
 import { describe, expect, it } from 'vitest';
-import { buildSpectrumAnnotations, zoneOf } from '@/components/charts/buildSpectrumAnnotations';
+import { buildSpectrumAnnotations } from '@/components/charts/buildSpectrumAnnotations';
 import { buildSpectrumDatasets } from '@/components/charts/buildSpectrumDatasets';
 import { describeSpectrum } from '@/components/charts/describeSpectrum';
 import type { SpectrumModel } from '@/components/charts/SpectrumModel';
@@ -94,10 +94,6 @@ describe('buildSpectrumAnnotations', () => {
     const { folded0, ...others } = buildSpectrumAnnotations(model(), colors);
     expect(JSON.stringify(folded0)).toContain(colors.folded);
     expect(JSON.stringify(others)).not.toContain(colors.folded);
-  });
-
-  it('counts zones of half the sampling rate from one', () => {
-    expect([zoneOf(499, 1000), zoneOf(501, 1000), zoneOf(1001, 1000)]).toEqual([1, 2, 3]);
   });
 });
 
