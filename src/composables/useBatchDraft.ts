@@ -38,15 +38,25 @@ export function useBatchDraft(projectId: string) {
     upload.changed();
   }
 
-  /** @returns the batch's id when every file has been received and the batch is closed; null when something is left */
+  /**
+   * Sends what is to be sent and closes the batch. Nothing is closed while a file is still being looked at or waits, nor in
+   * the same step in which the server refused one: its reason must be seen first.
+   * @returns the batch's id when it is closed; null when something is left
+   */
   async function submit(limits: Limits): Promise<string | null> {
     problem.value = '';
     try {
       batchId.value ??= (
         await batchesApi.create(projectId, { name: name.value.trim(), acquisition: acquisition.value })
       ).id;
+      const refusalsBefore = upload.serverRefusals.value;
       const isAllSent = await upload.send(batchId.value, limits);
-      if (!isAllSent || upload.receivedCount.value === 0) return null;
+      const refusals = upload.serverRefusals.value - refusalsBefore;
+      if (refusals > 0) {
+        problem.value = `The server refused ${refusals} of the files; the list says why. Send them again, or finish the batch without them.`;
+      }
+      const isLeft = upload.openCount.value > 0 || upload.readingCount.value > 0 || refusals > 0;
+      if (!isAllSent || isLeft || upload.receivedCount.value === 0) return null;
       await batchesApi.complete(batchId.value);
       return batchId.value;
     } catch (error) {

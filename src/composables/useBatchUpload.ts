@@ -1,5 +1,6 @@
 import type { AcquisitionSheet } from '@shared/schemas/acquisitionSheet.js';
 import type { CsvLayout } from '@shared/schemas/csvLayout.js';
+import { cleanFileName } from '@shared/utils/cleanFileName.js';
 import { computed, ref, shallowRef, triggerRef } from 'vue';
 import { ApiError } from '@/api/ApiError';
 import { uploadCaptures } from '@/api/uploadCaptures';
@@ -18,6 +19,8 @@ export interface UploadFile extends NamedFile {
   sha256: string | null;
   captureId: string | null;
   isDuplicate: boolean;
+  /** Refused after it was sent: it may be sent again. */
+  isRefusedByServer: boolean;
   message: string;
 }
 
@@ -61,6 +64,8 @@ export function useBatchUpload() {
 
   const changed = (): void => triggerRef(files);
   const openCount = computed(() => files.value.filter(isOpen).length);
+  const readingCount = computed(() => files.value.filter(({ state }) => state === 'reading').length);
+  const serverRefusals = computed(() => files.value.filter(({ isRefusedByServer }) => isRefusedByServer).length);
   const receivedCount = computed(() => files.value.filter(({ state }) => state === 'received').length);
   const totalBytes = computed(() =>
     files.value.reduce((sum, { file, state }) => sum + (state === 'refused' ? 0 : file.size), 0),
@@ -70,6 +75,16 @@ export function useBatchUpload() {
   );
 
   async function recognise(entry: UploadFile, limits: Limits): Promise<void> {
+    try {
+      await examine(entry, limits);
+    } catch {
+      // The file was moved, or its drive taken out, since it was chosen: the others go on.
+      entry.state = 'refused';
+      entry.message = 'The browser can’t read this file. Choose it again.';
+    }
+  }
+
+  async function examine(entry: UploadFile, limits: Limits): Promise<void> {
     if (entry.file.size > limits.maxFileBytes) {
       entry.state = 'refused';
       entry.message = 'The file is larger than this installation takes.';
@@ -85,6 +100,8 @@ export function useBatchUpload() {
   async function add(found: NamedFile[], limits: Limits): Promise<void> {
     const known = new Set(files.value.map(({ path }) => path));
     const added = found
+      // The name the server will list it under, so that its answer names the same file.
+      .map((named) => ({ ...named, path: cleanFileName(named.path) ?? named.path }))
       .filter(({ path }) => !known.has(path))
       .map((named): UploadFile => ({
         ...named,
@@ -96,6 +113,7 @@ export function useBatchUpload() {
         sha256: null,
         captureId: null,
         isDuplicate: false,
+        isRefusedByServer: false,
         message: '',
       }));
     files.value = [...files.value, ...added];
@@ -103,6 +121,13 @@ export function useBatchUpload() {
       await recognise(entry, limits);
       changed();
     }
+  }
+
+  /** Puts a file that the server refused back among those to be sent. */
+  function sendAgain(path: string): void {
+    const entry = files.value.find((file) => file.path === path && file.isRefusedByServer);
+    if (entry) Object.assign(entry, { state: 'ready', isRefusedByServer: false, message: '', sentBytes: 0 });
+    changed();
   }
 
   function remove(path: string): void {
@@ -123,6 +148,7 @@ export function useBatchUpload() {
         entry.message = '';
       } else {
         entry.state = 'refused';
+        entry.isRefusedByServer = true;
         entry.message = refused?.message ?? 'The server did not name this file in its answer. Send it again.';
       }
     }
@@ -190,6 +216,9 @@ export function useBatchUpload() {
     isSending,
     problem,
     openCount,
+    readingCount,
+    serverRefusals,
+    sendAgain,
     receivedCount,
     totalBytes,
     sentBytes,
