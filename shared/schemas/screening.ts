@@ -62,6 +62,13 @@ export const findingKinds = [
   'truncatedFile',
   'sourceAtFold',
   'companionMissing',
+  'foldedOrder',
+  'reflectedSweep',
+  'ambiguousFold',
+  'foldedShare',
+  'outerTriangle',
+  'methodsDisagree',
+  'foldedInOtherChannel',
 ] as const;
 export const findingKindSchema = z.enum(findingKinds);
 export type FindingKind = z.infer<typeof findingKindSchema>;

@@ -5,6 +5,7 @@ import { clearToFrequency } from './clearToFrequency.js';
 import { clearToFindings } from './clearToFindings.js';
 import { contaminationBound } from './contaminationBound.js';
 import { decideVerdict } from './decideVerdict.js';
+import { joinEvidence } from './FoldEvidence.js';
 import { foldFeatures } from './foldFeatures.js';
 import { foldPrior, foldScore } from './foldScore.js';
 import { bandEdgeFigures, judgeEdge } from './judgeEdge.js';
@@ -28,7 +29,9 @@ export function judgeChannel(
   const integrity = judgeIntegrity(record, thresholds, sheet);
   const isIrregular = record.irregular !== null;
   const tones =
-    record.irregular !== null ? judgeIrregular(record.irregular, thresholds) : judgeTones(record, thresholds, sheet);
+    record.irregular !== null
+      ? judgeIrregular(record.irregular, thresholds)
+      : joinEvidence([judgeTones(record, thresholds, sheet)]);
   const features = isIrregular ? null : foldFeatures(record);
   const score = foldScore(features, tones.logRatio, tones.shownConfidence);
   const bandEdge = bandEdgeFigures(record, thresholds, band, sheet.noiseFloorDb);

@@ -1,5 +1,6 @@
 import type { Finding, Tone } from '../schemas/screening.js';
 import type { Thresholds } from '../schemas/thresholds.js';
+import type { FoldEvidence } from './FoldEvidence.js';
 import { formatHz, formatPercent } from './formatNumber.js';
 import type { IrregularMeasurement } from './MeasurementRecord.js';
 
@@ -11,10 +12,7 @@ const reasons: Record<IrregularMeasurement['limitedBy'], string> = {
 };
 
 /** Tones recovered from irregular stamps: true frequencies; those beyond half the mean rate would be folded on a uniform grid. */
-export function judgeIrregular(
-  measured: IrregularMeasurement,
-  thresholds: Thresholds,
-): { tones: Tone[]; findings: Finding[]; logRatio: number; shownConfidence: number } {
+export function judgeIrregular(measured: IrregularMeasurement, thresholds: Thresholds): FoldEvidence {
   const halfHz = measured.meanRateHz / 2;
   const tones: Tone[] = measured.tones
     .filter((tone) => tone.standsOutDb >= thresholds.toneStandsOutDb)

@@ -1,21 +1,13 @@
 import type { AcquisitionSheet } from '../schemas/acquisitionSheet.js';
 import type { Finding, Tone } from '../schemas/screening.js';
 import type { Thresholds } from '../schemas/thresholds.js';
+import type { FoldEvidence } from './FoldEvidence.js';
 import { aliasHz, candidatesHz, zoneOf } from './foldArithmetic.js';
 import { foldedComb } from './foldedComb.js';
 import { foldedToneFinding } from './foldedToneFinding.js';
 import { findFamilies, type HarmonicFamily, matchSigmas, toneErrorHz } from './harmonicFamily.js';
 import { judgeMovedTones } from './judgeMovedTones.js';
 import type { MeasurementRecord, ToneMeasurement } from './MeasurementRecord.js';
-
-export interface TonesJudgement {
-  tones: Tone[];
-  findings: Finding[];
-  /** Log-likelihood ratio of the tone evidence for folding, 0 without any. */
-  logRatio: number;
-  /** Best confidence of a shown folded tone that carries more than −40 dB of the total below 0.9·fs/2; 0 for none. */
-  shownConfidence: number;
-}
 
 /** Relative error of a frequency written into a sheet: speeds and supplies are known to about this. */
 const statedRelativeError = 2e-3;
@@ -28,7 +20,7 @@ const labelledShareDb = -40;
 const labelledBand = 0.9;
 
 /** Explains each tone that stands out: stated source, harmonic, supply, folded source, folded member of a family, or nothing. */
-export function judgeTones(record: MeasurementRecord, thresholds: Thresholds, sheet: AcquisitionSheet): TonesJudgement {
+export function judgeTones(record: MeasurementRecord, thresholds: Thresholds, sheet: AcquisitionSheet): FoldEvidence {
   const { sampleRateHz, durationS } = record;
   if (sampleRateHz === null || durationS === null || durationS === 0) {
     return { tones: [], findings: [], logRatio: 0, shownConfidence: 0 };

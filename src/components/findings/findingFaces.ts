@@ -28,6 +28,13 @@ export const findingLabels: Record<FindingKind, string> = {
   truncatedFile: 'File cut off',
   sourceAtFold: 'Source at a fold',
   companionMissing: 'Companion missing',
+  foldedOrder: 'Folded order',
+  reflectedSweep: 'Sweep reflected at the fold',
+  ambiguousFold: 'Folded or not: ambiguous',
+  foldedShare: 'Folded share measured',
+  outerTriangle: 'Bispectral test',
+  methodsDisagree: 'Methods disagree',
+  foldedInOtherChannel: 'Folded in another channel',
 };
 
 export interface SeverityFace {
