@@ -82,7 +82,7 @@ export const thresholdInfo = {
     minimum: 0,
     maximum: 1,
     step: 1e-5,
-    help: 'Share of samples at the converter limits above which the capture cannot be cleared.',
+    help: 'Share of samples at the converter limits above which the capture cannot be cleared, unless the clipped stretches can be left out.',
   },
   maxMissingShare: {
     label: 'Largest missing share',
@@ -91,7 +91,7 @@ export const thresholdInfo = {
     minimum: 0,
     maximum: 1,
     step: 1e-4,
-    help: 'Share of missing samples (dropouts, gaps, not-a-number) above which the capture cannot be cleared.',
+    help: 'Share of missing samples (dropouts, gaps, not-a-number) above which the capture cannot be cleared, unless the damaged stretches can be left out.',
   },
   maxJitterShare: {
     label: 'Largest jitter share',
@@ -105,11 +105,11 @@ export const thresholdInfo = {
   minDurationS: {
     label: 'Shortest capture',
     unit: 's',
-    defaultValue: 0.5,
+    defaultValue: 0,
     minimum: 0,
     maximum: 86_400,
     step: 0.1,
-    help: 'A shorter capture is not judged: it cannot show its band edge.',
+    help: 'A shorter capture is not judged. At 0 only the number of samples counts: at least 256.',
   },
   independentReview: {
     label: 'Independent review',

@@ -24,6 +24,8 @@ export interface MeasurementRecord {
   timeStamps: TimeStampMeasurement | null;
   profile: ProfileMeasurement | null;
   edge: EdgeMeasurement | null;
+  /** Damaged stretches (clipping, dropouts, gaps) are left out of the spectra, and the rest was enough for them. */
+  damageLeftOut: boolean;
   tones: ToneMeasurement[];
   irregular: IrregularMeasurement | null;
   companion: CompanionMeasurement | null;
@@ -121,6 +123,23 @@ export interface EdgeMeasurement {
   /** Where the smoothed density leaves the strongest cell's level minus 60 dB for good. */
   occupiedToHz: number;
   mirror: MirrorMeasurement | null;
+  /** The rate was raised by repeating values or by straight lines, told from the samples themselves. */
+  raised: RaisedMeasurement | null;
+  /** The lowest cliff steeper than a filter in front of a converter can be. */
+  cliff: { edgeHz: number; depthDb: number } | null;
+}
+
+export interface RaisedMeasurement {
+  factor: number;
+  by: 'held' | 'straight';
+  /** Share of the samples between the old ones that follow the rule. */
+  followingShare: number;
+  /** The old folding frequency. */
+  pivotHz: number;
+  /** Where the content ends below it; null where it does not end. */
+  contentToHz: number | null;
+  /** Mean density next to the old folding frequency, dB. */
+  edgeDensityDb: number;
 }
 
 /** edge(t) = floor + slope·inband(t), least squares over frames. */

@@ -2,6 +2,7 @@ import type { AcquisitionSheet } from '../schemas/acquisitionSheet.js';
 import type { MeasurementRecord } from './MeasurementRecord.js';
 import { stopbandEnvelope } from './filterModels.js';
 import { normalQuantile } from './normalQuantile.js';
+import { oldRate } from './oldRate.js';
 
 /** Share of a noise floor stated in the sheet that is taken off the edge: it may be stated a decibel too high. */
 const floorShare = 0.8;
@@ -12,6 +13,8 @@ const imagesCounted = 32;
 export interface ContaminationBound {
   /** Upper confidence limit of the mean density next to fs/2, dB: the bound where no filter helps. */
   edgeUpperDb: number;
+  /** Half the rate of the recording that the bound speaks of: the old one where the rate was raised afterwards. */
+  foldingFrequencyHz: number;
   /** Largest density that may be folded back at f, all zones together, dB. */
   atDb: (frequencyHz: number) => number;
   usesFilter: boolean;
@@ -29,15 +32,20 @@ export function contaminationBound(
   confidence: number,
   sheet: AcquisitionSheet,
 ): ContaminationBound | null {
-  const { edge, sampleRateHz } = record;
+  const { edge } = record;
+  const old = oldRate(record);
+  // A capture whose rate was raised is bounded by the edge of its first recording, where that shows.
+  const usesOldEdge = old !== null && old.foldingFrequencyHz !== null && old.edgeDensityDb !== null;
+  const sampleRateHz = usesOldEdge ? 2 * (old.foldingFrequencyHz as number) : record.sampleRateHz;
   if (edge === null || sampleRateHz === null) return null;
+  const densityDb = usesOldEdge ? (old.edgeDensityDb as number) : edge.densityDb;
   // On a logarithmic scale, so that a wide spread never turns into a negative or absurd limit.
   const spread = Math.sqrt(Math.log(1 + edge.relativeError ** 2));
   const resonates = sheet.sensorResonanceHz !== undefined && sheet.sensorResonanceHz > sampleRateHz / 2;
-  const upperDb = edge.densityDb + (10 / Math.LN10) * Math.max(0, normalQuantile(confidence)) * spread;
+  const upperDb = densityDb + (10 / Math.LN10) * Math.max(0, normalQuantile(confidence)) * spread;
   // Noise added after sampling does not fold: what the sheet states of it is no contamination.
   const hasFloor = sheet.noiseFloorDb !== undefined && sheet.noiseFloorDb < upperDb + 1;
-  const floor = hasFloor ? floorShare * 10 ** (Math.min(sheet.noiseFloorDb ?? 0, edge.densityDb) / 10) : 0;
+  const floor = hasFloor ? floorShare * 10 ** (Math.min(sheet.noiseFloorDb ?? 0, densityDb) / 10) : 0;
   const edgeUpperDb = 10 * Math.log10(10 ** (upperDb / 10) - floor) + (resonates ? resonanceGainDb : 0);
   const filter = sheet.filter;
   const reference = filter === undefined ? null : stopbandEnvelope(filter, sampleRateHz / 2);
@@ -53,6 +61,7 @@ export function contaminationBound(
   };
   return {
     edgeUpperDb,
+    foldingFrequencyHz: sampleRateHz / 2,
     usesFilter,
     atDb: (frequencyHz) => edgeUpperDb + relativeDb(frequencyHz),
     assumption: `${

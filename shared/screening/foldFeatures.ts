@@ -1,4 +1,5 @@
 import type { MeasurementRecord, ProfileMeasurement } from './MeasurementRecord.js';
+import { oldRate } from './oldRate.js';
 
 /** Few figures, each of which moves the fold score in one direction only. */
 export interface FoldFeatures {
@@ -29,15 +30,14 @@ export function foldFeatures(record: MeasurementRecord): FoldFeatures | null {
     cliffDb: edge.steepestFallDb,
     followingDb: share === null ? -20 : Math.min(0, Math.max(-20, share)),
     floorLikeness: floorLikeness(profile, edge.kurtosis),
-    hasImages: showsImages(record),
+    hasImages: hasImages(record),
   };
 }
 
-/** Images are believed when the mirror is nearly perfect about the factor's own pivots and worse about all others. */
-export function showsImages({ edge }: MeasurementRecord): boolean {
-  const mirror = edge?.mirror ?? null;
-  if (mirror === null) return false;
-  return mirror.correlation > 0.95 && mirror.correlation - mirror.runnerUp > 0.15 && mirror.imageDb < 0;
+/** Energy at the edge of a capture whose rate was raised is images. */
+function hasImages(record: MeasurementRecord): boolean {
+  const old = oldRate(record);
+  return old !== null && old.by !== 'cliff';
 }
 
 const floorBands = 8;

@@ -2,7 +2,7 @@ import type { AcquisitionSheet } from '../schemas/acquisitionSheet.js';
 import type { ChannelJudgement, Finding } from '../schemas/screening.js';
 import type { Thresholds } from '../schemas/thresholds.js';
 import { clearToFrequency } from './clearToFrequency.js';
-import { clearToFindings } from './clearToFindings.js';
+import { clearToFindings, isBandProtected, type Protection } from './clearToFindings.js';
 import { contaminationBound } from './contaminationBound.js';
 import { decideVerdict } from './decideVerdict.js';
 import { joinEvidence } from './FoldEvidence.js';
@@ -13,6 +13,8 @@ import { judgeIntegrity } from './judgeIntegrity.js';
 import { judgeIrregular } from './judgeIrregular.js';
 import { judgeTones } from './judgeTones.js';
 import type { MeasurementRecord } from './MeasurementRecord.js';
+import { oldRate } from './oldRate.js';
+import { worstFoldedShareDb } from './worstFoldedShare.js';
 
 /**
  * Judges one channel: findings, verdict, clear-to frequency, fold score. Pure: the same record, thresholds and sheet always
@@ -38,17 +40,23 @@ export function judgeChannel(
   const bound = isIrregular ? null : contaminationBound(record, thresholds.confidence, sheet);
   const findings: Finding[] = [...tones.findings, ...integrity];
   let clearToHz: number | null = null;
+  let isProtected = false;
   if (bound !== null && record.profile !== null && rateHz !== null) {
     const stopsHz = tones.tones
       .filter(({ explanation }) => explanation.startsWith('folded') || explanation === 'movedBetweenRates')
       .map(({ frequencyHz }) => frequencyHz);
+    if (bound.foldingFrequencyHz < rateHz / 2) stopsHz.push(bound.foldingFrequencyHz);
     const options = { lowestHz: band[0], highestHz: band[1], sampleRateHz: rateHz, stopsHz };
-    const result = clearToFrequency(record.profile, bound, thresholds.requiredProtectionDb, options);
-    clearToHz = result.clearToHz;
-    findings.push(...clearToFindings(result, thresholds, band, bound.assumption, score?.score ?? 0));
+    const protection: Protection = {
+      ...clearToFrequency(record.profile, bound, thresholds.requiredProtectionDb, options),
+      worstShareDb: worstFoldedShareDb(record.profile, bound, band),
+      isRaised: oldRate(record) !== null,
+    };
+    clearToHz = protection.clearToHz;
+    isProtected = isBandProtected(protection, thresholds, band[1]);
+    findings.push(...clearToFindings(protection, thresholds, band, bound.assumption, score?.score ?? 0));
   }
   if (bound !== null && features !== null) {
-    const isProtected = clearToHz !== null && clearToHz >= band[1];
     const isDamaged = integrity.some(
       ({ kind, severity }) => severity === 'unproven' && kind !== 'rateDisagrees' && kind !== 'tooShort',
     );

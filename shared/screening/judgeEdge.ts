@@ -5,6 +5,8 @@ import type { FoldFeatures } from './foldFeatures.js';
 import { formatDb, formatHz, formatPercent } from './formatNumber.js';
 import type { MeasurementRecord } from './MeasurementRecord.js';
 import { normalQuantile } from './normalQuantile.js';
+import { oldRate } from './oldRate.js';
+import { rateRaised } from './rateRaised.js';
 
 /** Below this in-band range the level over time can say nothing about the edge. */
 const leastRangeDb = 6;
@@ -61,19 +63,8 @@ export function judgeEdge(
   const findings: Finding[] = [];
   const { skirtDb, guardShareDb, edgeAboveFloorDb } = bandEdge;
   const isAtFloor = edgeAboveFloorDb !== null && edgeAboveFloorDb < nearFloorDb;
-  if (features.hasImages && edge.mirror !== null) {
-    const { pivotHz, factor, correlation, imageDb } = edge.mirror;
-    findings.push({
-      kind: 'rateRaised',
-      severity: 'limit',
-      confidence: Math.min(0.999, Math.max(0.5, correlation)),
-      frequencyHz: pivotHz,
-      strengthDb: imageDb,
-      text: `The spectrum is mirrored about ${formatHz(pivotHz)} and its multiples: the rate was raised ${factor}-fold by repeating samples or by straight lines. What stands above ${formatHz(pivotHz)} are images, and the edge of the original recording can't be seen.`,
-      evidence: { pivotHz, factor, correlation, imageDb },
-      method: 'correlation of the log density with its mirror',
-    });
-  }
+  const old = oldRate(record);
+  if (old !== null) findings.push(rateRaised(old, sampleRateHz));
   const follows = edge.follows;
   if (follows !== null && follows.slopeError > 0 && !features.hasImages && !given.isDamaged) {
     const sigmas = follows.slope / follows.slopeError;
@@ -109,8 +100,10 @@ export function judgeEdge(
   ) {
     findings.push({
       kind: 'bandEdgeUnprotected',
-      // Energy in the guard band alone does not limit what the bound protects; a missing skirt does.
-      severity: given.isProtected && skirtDb >= thresholds.minSkirtDb ? 'note' : 'limit',
+      // Energy in the guard band alone does not limit what the bound protects; a missing skirt does, unless the edge is that
+      // far below all the power there is.
+      severity:
+        given.isProtected && Math.max(skirtDb, -features.edgeShareDb) >= thresholds.minSkirtDb ? 'note' : 'limit',
       confidence: foldConfidence,
       ...place,
       strengthDb: guardShareDb,

@@ -21,6 +21,11 @@ export function judgeIntegrity(record: MeasurementRecord, thresholds: Thresholds
   ) => findings.push({ kind, severity, confidence: 1, text, evidence, method: 'count over all samples', ...extra });
   const { integrity, obstacles, durationS, samples, level } = record;
 
+  // Stretches that could be left out stop no statement about the rest.
+  const damage = (isOver: boolean): FindingSeverity => {
+    if (record.damageLeftOut) return 'note';
+    return isOver ? 'unproven' : 'limit';
+  };
   if (record.sampleRateHz === null) {
     add(
       'rateUnknown',
@@ -37,7 +42,7 @@ export function judgeIntegrity(record: MeasurementRecord, thresholds: Thresholds
     add(
       'tooShort',
       'unproven',
-      `The capture holds only ${length}; at least ${formatSeconds(thresholds.minDurationS)} and 256 samples are needed to judge its band edge.`,
+      `The capture holds only ${length}; at least ${thresholds.minDurationS > 0 ? `${formatSeconds(thresholds.minDurationS)} and ` : ''}256 samples are needed to judge its band edge.`,
       { samples, ...(durationS === null ? {} : { durationS }), minDurationS: thresholds.minDurationS },
     );
   }
@@ -53,7 +58,7 @@ export function judgeIntegrity(record: MeasurementRecord, thresholds: Thresholds
     const share = notFiniteCount / Math.max(1, samples);
     add(
       'notFinite',
-      share > thresholds.maxMissingShare || level === null ? 'unproven' : 'limit',
+      level === null ? 'unproven' : damage(share > thresholds.maxMissingShare),
       `${notFiniteCount} of ${samples} samples are no numbers (${formatPercent(share)}); those stretches are left out of the spectra.`,
       { notFiniteCount, share },
     );
@@ -62,7 +67,7 @@ export function judgeIntegrity(record: MeasurementRecord, thresholds: Thresholds
     const over = integrity.clippedShare > thresholds.maxClippedShare;
     add(
       'clipping',
-      over ? 'unproven' : 'limit',
+      damage(over),
       `${integrity.clippedCount} samples are clipped (${formatPercent(integrity.clippedShare)}) in ${integrity.clippedRuns} flat tops${integrity.clipsBelowFullScale ? ', below full scale' : ''}${spansText(integrity.clippedSpans)}. Clipping after sampling makes harmonics that fold: energy near the band edge may come from it.`,
       {
         clippedCount: integrity.clippedCount,
@@ -78,7 +83,7 @@ export function judgeIntegrity(record: MeasurementRecord, thresholds: Thresholds
     const over = integrity.missingShare > thresholds.maxMissingShare;
     add(
       'dropout',
-      over ? 'unproven' : 'limit',
+      damage(over),
       `${counted(integrity.dropoutCount, 'stretch holds', 'stretches hold')} one value far longer than the signal explains (${formatPercent(integrity.missingShare)} of the samples)${spansText(integrity.dropouts)}; left out of the spectra.`,
       { dropoutCount: integrity.dropoutCount, missingShare: integrity.missingShare, limit: thresholds.maxMissingShare },
       firstSpan(integrity.dropouts),
@@ -159,14 +164,18 @@ type Add = (
   extra?: Partial<Finding>,
 ) => void;
 
-function judgeStamps({ timeStamps }: MeasurementRecord, thresholds: Thresholds, add: Add): void {
+function judgeStamps(
+  { timeStamps, damageLeftOut, sampleRateHz }: MeasurementRecord,
+  thresholds: Thresholds,
+  add: Add,
+): void {
   if (timeStamps === null) return;
   const { gaps, missingShare, repeatedCount, jitterShare, irregular } = timeStamps;
   if (gaps.length > 0) {
     const over = missingShare > thresholds.maxMissingShare;
     add(
       'timeStampGap',
-      over ? 'unproven' : 'limit',
+      damageLeftOut ? 'note' : over ? 'unproven' : 'limit',
       `Rows are missing at ${gaps.length} places (${formatPercent(missingShare)} of the grid)${spansText(gaps)}.`,
       { gaps: gaps.length, missingShare, limit: thresholds.maxMissingShare },
       { ...firstSpan(gaps), method: 'time stamps against a uniform grid' },
@@ -182,10 +191,13 @@ function judgeStamps({ timeStamps }: MeasurementRecord, thresholds: Thresholds, 
     );
   }
   if (!irregular && jitterShare > thresholds.maxJitterShare) {
+    // Stamps written with few digits scatter by their rounding; the samples were taken on the grid all the same.
+    const roundedShare = (timeStamps.roundingStepS * (sampleRateHz ?? 0)) / Math.sqrt(12);
+    const isRounding = jitterShare <= 1.2 * roundedShare;
     add(
       'timeStampJitter',
-      'limit',
-      `The time stamps scatter by ${formatPercent(jitterShare)} of the sampling interval about a uniform grid.`,
+      isRounding ? 'note' : 'limit',
+      `The time stamps scatter by ${formatPercent(jitterShare)} of the sampling interval about a uniform grid${isRounding ? ', which the rounding of the written stamps explains' : ''}.`,
       { jitterShare, limit: thresholds.maxJitterShare },
       { method: 'time stamps against a uniform grid' },
     );

@@ -7,6 +7,7 @@ import type {
   ToneMeasurement,
 } from '../../shared/screening/MeasurementRecord.js';
 import { decibels } from '../dsp/decibels.js';
+import type { RaisedRate } from '../dsp/RaisedRateMeter.js';
 import { removeTones } from '../dsp/removeTones.js';
 import type { SampleSource } from '../readers/SampleSource.js';
 import type { ChannelMeasurement, MeasuredSpectrum } from './ChannelMeasurement.js';
@@ -21,6 +22,8 @@ export interface ChannelParts {
   spectra: SpectrumMeter | null;
   tones: ToneMeasurement[];
   irregular: IrregularMeasurement | null;
+  raised: RaisedRate | null;
+  damageLeftOut: boolean;
 }
 
 const mostSpans = 16;
@@ -80,7 +83,11 @@ export function buildMeasurement(source: SampleSource, parts: ChannelParts, chan
       timeStamps: measureTimeStamps(source),
       profile:
         toneless === null || median === null || spectra === null ? null : measureProfile(spectra, toneless, median),
-      edge: toneless === null || mean === null || spectra === null ? null : measureEdge(spectra, mean, toneless),
+      edge:
+        toneless === null || mean === null || spectra === null
+          ? null
+          : measureEdge(spectra, mean, toneless, parts.raised),
+      damageLeftOut: parts.damageLeftOut,
       tones: hasSpectra ? parts.tones : [],
       irregular: isSilent ? null : parts.irregular,
       companion: null,

@@ -1,6 +1,7 @@
 import type { AcquisitionSheet } from '../../shared/schemas/acquisitionSheet.js';
 import type { IrregularMeasurement } from '../../shared/screening/MeasurementRecord.js';
 import type { SampleSource } from '../readers/SampleSource.js';
+import { RaisedRateMeter } from '../dsp/RaisedRateMeter.js';
 import { addTones } from './addTones.js';
 import { buildMeasurement, type ChannelParts } from './buildMeasurement.js';
 import type { ChannelMeasurement } from './ChannelMeasurement.js';
@@ -39,6 +40,8 @@ export function measureCapture(
     spectra: null,
     tones: [],
     irregular: null,
+    raised: null,
+    damageLeftOut: false,
   }));
   const rateHz = source.sampleRateHz;
   const isIrregular = source.timeStamps?.irregular === true;
@@ -69,9 +72,15 @@ function addSpectra(source: SampleSource, rateHz: number, parts: ChannelParts[],
   const plan = planSegments(source.frameCount, source.channelCount);
   const makeMeters = (avoided: FrameSpan[][]): SpectrumMeter[] => {
     const made = avoided.map((spans) => new SpectrumMeter(plan, rateHz, spans));
+    const raised = parts.map(({ integrity }) => new RaisedRateMeter(integrity.quantum, integrity.level?.rms ?? 0));
     pass(1, (channels, frames) =>
-      made.forEach((meter, c) => meter.push(holdLastFinite(channels[c] as Float64Array, frames), frames)),
+      made.forEach((meter, c) => {
+        const samples = holdLastFinite(channels[c] as Float64Array, frames);
+        meter.push(samples, frames);
+        raised[c]?.push(samples, frames);
+      }),
     );
+    parts.forEach((part, c) => (part.raised = raised[c]?.result() ?? null));
     return made;
   };
   const avoided = parts.map((part) => avoidedSpans(source, rateHz, part));
@@ -79,7 +88,10 @@ function addSpectra(source: SampleSource, rateHz: number, parts: ChannelParts[],
   // Damage sprinkled over the whole capture leaves no segment: then it stays in, and the integrity findings say so.
   const isStarved = meters.map((meter, c) => meter.survey.segments < leastSegments && (avoided[c]?.length ?? 0) > 0);
   if (isStarved.includes(true)) meters = makeMeters(avoided.map((spans, c) => (isStarved[c] === true ? [] : spans)));
-  parts.forEach((part, c) => (part.spectra = meters[c] ?? null));
+  parts.forEach((part, c) => {
+    part.spectra = meters[c] ?? null;
+    part.damageLeftOut = (avoided[c]?.length ?? 0) > 0 && isStarved[c] !== true;
+  });
   addTones(source, rateHz, parts, meters, pass);
 }
 

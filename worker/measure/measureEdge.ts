@@ -1,13 +1,20 @@
-import type { EdgeMeasurement } from '../../shared/screening/MeasurementRecord.js';
+import type { EdgeMeasurement, RaisedMeasurement } from '../../shared/screening/MeasurementRecord.js';
 import { decibels } from '../dsp/decibels.js';
 import { edgeFollowsSource } from '../dsp/edgeFollowsSource.js';
+import { findCliff, oldBandEnd } from '../dsp/findCliff.js';
 import { mirrorAboutPivot } from '../dsp/mirrorAboutPivot.js';
+import type { RaisedRate } from '../dsp/RaisedRateMeter.js';
 import { smoothDensity } from '../dsp/smoothDensity.js';
 import { effectiveAverages } from './measureProfile.js';
 import { edgeBins, frameBands, type SpectrumMeter } from './SpectrumMeter.js';
 
 /** Everything about the band edge: level with its error, how it changes over time, how the spectrum falls towards it. */
-export function measureEdge(meter: SpectrumMeter, mean: Float64Array, toneless: Float64Array): EdgeMeasurement {
+export function measureEdge(
+  meter: SpectrumMeter,
+  mean: Float64Array,
+  toneless: Float64Array,
+  raised: RaisedRate | null,
+): EdgeMeasurement {
   const { resolutionHz, segmentLength, segments } = meter.survey;
   const { from, to } = edgeBins(segmentLength);
   const density = meanOver(toneless, from, to);
@@ -38,6 +45,20 @@ export function measureEdge(meter: SpectrumMeter, mean: Float64Array, toneless: 
     fallToEdgeDb: decibels(top) - decibels(density),
     occupiedToHz: occupied * resolutionHz,
     mirror: mirrorAboutPivot(mean, resolutionHz),
+    raised: raised === null ? null : describeRaised(raised, toneless, resolutionHz),
+    cliff: findCliff(toneless, resolutionHz),
+  };
+}
+
+/** The old folding frequency, the end of the content below it, and the density next to it: the edge of the old recording. */
+function describeRaised(raised: RaisedRate, toneless: Float64Array, resolutionHz: number): RaisedMeasurement {
+  const pivotBin = Math.floor((toneless.length - 1) / raised.factor);
+  const oldBand = toneless.subarray(0, pivotBin + 1);
+  return {
+    ...raised,
+    pivotHz: pivotBin * resolutionHz,
+    contentToHz: findCliff(oldBand, resolutionHz, oldBandEnd)?.edgeHz ?? null,
+    edgeDensityDb: decibels(meanOver(oldBand, Math.max(1, Math.floor(0.97 * pivotBin)), Math.max(1, pivotBin - 2))),
   };
 }
 

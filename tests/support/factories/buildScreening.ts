@@ -54,6 +54,7 @@ export function buildMeasurementRecord(overrides: Partial<MeasurementRecord> = {
     timeStamps: null,
     profile: null,
     edge: null,
+    damageLeftOut: false,
     tones: [],
     irregular: null,
     companion: null,
