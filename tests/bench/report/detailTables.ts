@@ -1,0 +1,69 @@
+import { verdicts } from '../../../shared/schemas/screening.js';
+import type { BenchFigures } from '../figures/benchFigures.js';
+import type { GroupFigures } from '../figures/groupFigures.js';
+import { countText, shareText } from './formatFigures.js';
+import type { ReportTable } from './ReportTable.js';
+
+export function evidenceTable({ evidence }: BenchFigures): ReportTable {
+  return {
+    title: 'Folded captures by what there is to see',
+    columns: ['evidence', 'called folded', 'called clear'],
+    rows: evidence.map((one) => [one.evidence, shareText(one.calledFolded), countText(one.calledClear)]),
+    notes: ['Provable: tone, moving_mirror, pair, irregular.'],
+  };
+}
+
+export function toneTable({ tones }: BenchFigures): ReportTable {
+  return {
+    title: 'Folded tones',
+    columns: [
+      'captures',
+      'visible ones found',
+      'true frequency right',
+      'wrongly reported',
+      'captures with a wrong one',
+    ],
+    rows: tones.map(({ group, figures }) => [
+      group,
+      countText(figures.found),
+      countText(figures.trueRight),
+      `${countText(figures.wrong)}${figures.unjudged > 0 ? `, ${figures.unjudged} can't be judged` : ''}`,
+      String(figures.capturesWithWrong),
+    ]),
+    notes: [
+      'Uniform captures. Not to be judged: reported on folded captures whose list of true tones is cut off or moving.',
+    ],
+  };
+}
+
+export function groupTables(figures: BenchFigures): ReportTable[] {
+  return [
+    groupTable('Families', 'family', figures.families),
+    groupTable('Real recordings by operation', 'operation', figures.operations),
+    groupTable('Look-alikes', 'look-alike', figures.lookalikes),
+    groupTable('Damage', 'defect', figures.defects),
+  ].filter(({ rows }) => rows.length > 0);
+}
+
+function groupTable(title: string, name: string, groups: readonly GroupFigures[]): ReportTable {
+  return {
+    title,
+    columns: [name, 'folded: verdicts', 'clean: verdicts', 'grey: verdicts', 'area under ROC'],
+    rows: groups.map(({ group, folded, clean, grey, area }) => [
+      group,
+      verdictText(folded),
+      verdictText(clean),
+      verdictText(grey),
+      Number.isNaN(area) ? '–' : area.toFixed(3),
+    ]),
+    notes: [],
+  };
+}
+
+/** "12: 9 folded, 3 unproven" */
+function verdictText(counts: Record<string, number>): string {
+  const total = counts['total'] ?? 0;
+  if (total === 0) return '–';
+  const seen = [...verdicts, 'failed'].filter((verdict) => (counts[verdict] ?? 0) > 0);
+  return `${total}: ${seen.map((verdict) => `${counts[verdict]} ${verdict}`).join(', ')}`;
+}

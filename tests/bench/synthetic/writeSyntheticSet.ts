@@ -1,0 +1,1 @@
+export { writeSyntheticSet } from '../syntheticSet.js';
