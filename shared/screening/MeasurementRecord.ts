@@ -204,4 +204,48 @@ export interface CompanionMeasurement {
   sampleRateHz: number;
   durationS: number;
   tones: ToneMeasurement[];
+  /** Missing in older records; null where the captures are too short to be compared. */
+  alignment?: CompanionAlignment | null;
+  /** Where each tone of this capture would stand in the companion, and what stands there. Missing in older records. */
+  moves?: ToneMove[];
+}
+
+/** The companion's clock against this capture's: what happens here at t happens there at t + lag. */
+export interface CompanionAlignment {
+  lagS: number;
+  /** Standard error of the lag. */
+  lagErrorS: number;
+  /** Peak of the cross-correlation over the standard deviation that unrelated captures would give. */
+  significance: number;
+  /** Chance of such a peak anywhere among the lags between unrelated captures. */
+  chanceProbability: number;
+  /** 0 … 1: how far the common band's phases agree at this lag. */
+  agreement: number;
+  isInverted: boolean;
+  overlapS: number;
+}
+
+/** One tone looked for in the companion at its own place and at the place of every frequency that looks like it here. */
+export interface ToneMove {
+  frequencyHz: number;
+  /** How long it sounds, (Σp)²/Σp² of its power over time: 1/soundsS is how finely its place is known. */
+  soundsS: number;
+  /** Frames of one length over both captures, each with the other's at the same moment; else powers only. */
+  isAligned: boolean;
+  /** The unfolded frequency first, then by ascending true frequency. */
+  places: TonePlace[];
+}
+
+export interface TonePlace {
+  trueHz: number;
+  /** Where it lands in the companion. */
+  expectedHz: number;
+  /** Amplitude there over the tone's here, dB; aligned: only what moves together with the tone over time. */
+  ratioDb: number;
+  /** The same at places beside it, where nothing is expected, dB. */
+  besideDb: number;
+  /** What this capture shows at that place, the same way, over the tone, dB; null beyond its fs/2 and at the tone itself. */
+  hereDb: number | null;
+  /** 0 … 1: squared correlation over time of the tone here and what stands there; null where not aligned. */
+  coherence: number | null;
 }

@@ -9,14 +9,23 @@ const largestClearScore = 0.3;
 export interface Protection extends ClearTo {
   /** Worst-case folded energy over the power in the band of interest, dB. */
   worstShareDb: number;
+  /** Half the rate of the capture. */
+  foldingFrequencyHz: number;
   /** Both statements are limited to what the old folding frequency allows where the rate was raised. */
   isRaised: boolean;
 }
 
-/** Whether the band of interest is protected: line by line up to its end, or as a whole. */
-export function isBandProtected(protection: Protection, thresholds: Thresholds, highestHz: number): boolean {
-  const { clearToHz, worstShareDb } = protection;
-  return (clearToHz !== null && clearToHz >= highestHz) || worstShareDb <= -thresholds.requiredProtectionDb;
+/**
+ * Whether the band of interest is protected: line by line up to its end, or as a whole. A band that reaches into the guard
+ * band, where a filter's skirt folds onto itself, has to be protected line by line.
+ */
+export function isBandProtected(
+  { clearToHz, worstShareDb, foldingFrequencyHz }: Protection,
+  thresholds: Thresholds,
+  highestHz: number,
+): boolean {
+  if (clearToHz !== null && clearToHz >= highestHz) return true;
+  return worstShareDb <= -thresholds.requiredProtectionDb && highestHz <= thresholds.guardStart * foldingFrequencyHz;
 }
 
 /**

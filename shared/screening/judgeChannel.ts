@@ -50,6 +50,7 @@ export function judgeChannel(
     const protection: Protection = {
       ...clearToFrequency(record.profile, bound, thresholds.requiredProtectionDb, options),
       worstShareDb: worstFoldedShareDb(record.profile, bound, band),
+      foldingFrequencyHz: rateHz / 2,
       isRaised: oldRate(record) !== null,
     };
     clearToHz = protection.clearToHz;

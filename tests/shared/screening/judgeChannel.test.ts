@@ -26,6 +26,38 @@ describe('judgeChannel', () => {
     expect(judgement.clearToHz).toBeLessThan(900);
   });
 
+  it('calls a band clear as a whole although its quiet stretches stand alone', () => {
+    const record = buildRecord();
+    if (record.profile === null) throw new Error('a measured record is expected');
+    // A strong hump below 200 Hz over a floor that the edge shares.
+    const hump = record.profile.meanDb.map((_, cell) => (cell < 102 ? -40 : -110));
+    const quiet = { ...record, profile: { ...record.profile, meanDb: hump, tonelessDb: hump } };
+    const judgement = judge(quiet);
+    expect(judgement.clearToHz).toBeLessThan(230);
+    expect(judgement.verdict).toBe('clear');
+    expect(judgement.findings.find(({ kind }) => kind === 'clearTo')?.severity).toBe('note');
+    expect(judge(quiet, {}, { ...defaultThresholds, requiredProtectionDb: 100 }).verdict).toBe('unproven');
+  });
+
+  it('calls a capture whose rate was raised limited, and bounds it by the edge of its first recording', () => {
+    const record = buildRecord();
+    if (record.edge === null) throw new Error('a measured record is expected');
+    const raised = {
+      factor: 2,
+      by: 'held' as const,
+      followingShare: 1,
+      pivotHz: 500,
+      contentToHz: 452,
+      edgeDensityDb: -100,
+    };
+    const judgement = judge({ ...record, edge: { ...record.edge, densityDb: -41, raised } });
+    expect(judgement.verdict).toBe('limited');
+    expect(judgement.contaminationBoundDb).toBeCloseTo(-100 + 3.92, 0);
+    expect(judgement.clearToHz).toBeLessThanOrEqual(500);
+    const finding = judgement.findings.find(({ kind }) => kind === 'rateRaised');
+    expect(finding).toMatchObject({ severity: 'limit', frequencyHz: 452, evidence: { factor: 2 } });
+  });
+
   it('calls it unproven without a roll-off', () => {
     const record = buildRecord();
     if (record.profile === null || record.edge === null) throw new Error('a measured record is expected');

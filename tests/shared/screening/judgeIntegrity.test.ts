@@ -8,8 +8,9 @@ const stamps = { irregular: false, jitterShare: 0, missingShare: 0, gaps: [], re
 const kinds = (
   record: Parameters<typeof judgeIntegrity>[0],
   sheet: Parameters<typeof judgeIntegrity>[2] = {},
+  thresholds = defaultThresholds,
 ): Record<string, string> =>
-  Object.fromEntries(judgeIntegrity(record, defaultThresholds, sheet).map(({ kind, severity }) => [kind, severity]));
+  Object.fromEntries(judgeIntegrity(record, thresholds, sheet).map(({ kind, severity }) => [kind, severity]));
 
 describe('judgeIntegrity', () => {
   it('finds nothing in an undamaged recording', () => {
@@ -21,6 +22,28 @@ describe('judgeIntegrity', () => {
       buildRecord({ integrity: { ...base, clippedCount: 20, clippedRuns: 4, clippedShare } });
     expect(kinds(clipped(1e-3))).toEqual({ clipping: 'unproven' });
     expect(kinds(clipped(1e-5))).toEqual({ clipping: 'limit' });
+  });
+
+  it('only notes damage that the spectra could leave out', () => {
+    const damaged = {
+      ...base,
+      clippedCount: 20,
+      clippedRuns: 4,
+      clippedShare: 1e-3,
+      dropoutCount: 2,
+      missingShare: 0.02,
+    };
+    expect(kinds(buildRecord({ integrity: damaged }))).toEqual({ clipping: 'unproven', dropout: 'unproven' });
+    expect(kinds(buildRecord({ integrity: damaged, damageLeftOut: true }))).toEqual({
+      clipping: 'note',
+      dropout: 'note',
+    });
+  });
+
+  it('takes a scatter of the stamps that their rounding explains for no jitter', () => {
+    const rounded = { ...stamps, jitterShare: 0.03, roundingStepS: 5e-5 };
+    expect(kinds(buildRecord({ timeStamps: rounded }))).toEqual({ timeStampJitter: 'note' });
+    expect(kinds(buildRecord({ timeStamps: { ...rounded, jitterShare: 0.2 } }))).toEqual({ timeStampJitter: 'limit' });
   });
 
   it('reports missing rows once, as a gap and not as values that are no numbers', () => {
@@ -64,7 +87,8 @@ describe('judgeIntegrity', () => {
     expect(kinds(buildRecord({ integrity: { ...base, pauseCount: 1, pauseShare: 0.2, pauses } }))).toEqual({
       silent: 'note',
     });
-    expect(kinds(buildRecord({ integrity: { ...base, pauseCount: 1, pauseShare: 0.97, pauses } }))).toEqual({
+    const asked = { ...defaultThresholds, minDurationS: 0.5 };
+    expect(kinds(buildRecord({ integrity: { ...base, pauseCount: 1, pauseShare: 0.97, pauses } }), {}, asked)).toEqual({
       tooShort: 'unproven',
       silent: 'note',
     });
