@@ -2,7 +2,7 @@ import type { EntityManager } from 'typeorm';
 import type { AcquisitionSheet } from '../../shared/schemas/acquisitionSheet.js';
 import type { PutAcquisition } from '../../shared/schemas/capture.js';
 import { judgeCapture } from '../../shared/screening/judgeCapture.js';
-import { judgeChannel } from '../../shared/screening/judgeChannel.js';
+import { judgeChannels } from '../../shared/screening/judgeChannels.js';
 import { needsNewMeasurement } from '../../shared/screening/needsNewMeasurement.js';
 import type { AppDependencies } from '../AppDependencies.js';
 import { Capture, ChannelResult, type Batch } from '../entities/index.js';
@@ -24,10 +24,15 @@ async function judgeAgain(manager: EntityManager, capture: Capture, sheet: Acqui
     where: { captureId: capture.id },
     order: { channelIndex: 'ASC' },
   });
-  const screens = results.map(({ measurement, screen }) => ({
-    ...screen,
-    ...judgeChannel(measurement, values, sheet),
-  }));
+  const judgements = judgeChannels(
+    results.map(({ measurement }) => measurement),
+    values,
+    sheet,
+  );
+  const screens = results.flatMap(({ screen }, index) => {
+    const judgement = judgements[index];
+    return judgement === undefined ? [] : [{ ...screen, ...judgement }];
+  });
   await saveJudgement(manager, {
     captureId: capture.id,
     thresholdsVersion: version,

@@ -1,20 +1,17 @@
 import type { AcquisitionSheet } from '../schemas/acquisitionSheet.js';
 import type { ChannelJudgement, Finding } from '../schemas/screening.js';
 import type { Thresholds } from '../schemas/thresholds.js';
-import { clearToFrequency } from './clearToFrequency.js';
-import { clearToFindings, isBandProtected, type Protection } from './clearToFindings.js';
-import { contaminationBound } from './contaminationBound.js';
 import { decideVerdict } from './decideVerdict.js';
-import { joinEvidence } from './FoldEvidence.js';
+import { type FoldEvidence, isFoldedTone, joinEvidence } from './FoldEvidence.js';
 import { foldFeatures } from './foldFeatures.js';
 import { foldPrior, foldScore } from './foldScore.js';
 import { bandEdgeFigures, judgeEdge } from './judgeEdge.js';
 import { judgeIntegrity } from './judgeIntegrity.js';
 import { judgeIrregular } from './judgeIrregular.js';
+import { judgeProtection } from './judgeProtection.js';
 import { judgeTones } from './judgeTones.js';
 import type { MeasurementRecord } from './MeasurementRecord.js';
-import { oldRate } from './oldRate.js';
-import { worstFoldedShareDb } from './worstFoldedShare.js';
+import { methodsDisagree } from './methodsDisagree.js';
 
 /**
  * Judges one channel: findings, verdict, clear-to frequency, fold score. Pure: the same record, thresholds and sheet always
@@ -29,48 +26,27 @@ export function judgeChannel(
   const rateHz = record.sampleRateHz;
   const band = bandOfInterest(rateHz, thresholds, sheet);
   const integrity = judgeIntegrity(record, thresholds, sheet);
-  const isIrregular = record.irregular !== null;
-  const tones =
-    record.irregular !== null
-      ? judgeIrregular(record.irregular, thresholds)
-      : joinEvidence([judgeTones(record, thresholds, sheet)]);
-  const features = isIrregular ? null : foldFeatures(record);
-  const score = foldScore(features, tones.logRatio, tones.shownConfidence);
+  const evidence = gatherEvidence(record, thresholds, sheet);
+  const features = record.irregular === null ? foldFeatures(record) : null;
+  const score = foldScore(features, evidence.logRatio, evidence.shownConfidence);
   const bandEdge = bandEdgeFigures(record, thresholds, band, sheet.noiseFloorDb);
-  const bound = isIrregular ? null : contaminationBound(record, thresholds.confidence, sheet);
-  const findings: Finding[] = [...tones.findings, ...integrity];
-  let clearToHz: number | null = null;
-  let isProtected = false;
-  if (bound !== null && record.profile !== null && rateHz !== null) {
-    const stopsHz = tones.tones
-      .filter(({ explanation }) => explanation.startsWith('folded') || explanation === 'movedBetweenRates')
-      .map(({ frequencyHz }) => frequencyHz);
-    if (bound.foldingFrequencyHz < rateHz / 2) stopsHz.push(bound.foldingFrequencyHz);
-    const options = { lowestHz: band[0], highestHz: band[1], sampleRateHz: rateHz, stopsHz };
-    const protection: Protection = {
-      ...clearToFrequency(record.profile, bound, thresholds.requiredProtectionDb, options),
-      worstShareDb: worstFoldedShareDb(record.profile, bound, band),
-      foldingFrequencyHz: rateHz / 2,
-      isRaised: oldRate(record) !== null,
-    };
-    clearToHz = protection.clearToHz;
-    isProtected = isBandProtected(protection, thresholds, band[1]);
-    findings.push(...clearToFindings(protection, thresholds, band, bound.assumption, score?.score ?? 0));
-  }
-  if (bound !== null && features !== null) {
+  const findings: Finding[] = [...evidence.findings, ...integrity];
+  const protection = judgeProtection(record, thresholds, sheet, {
+    band,
+    foldedHz: evidence.tones.filter(isFoldedTone).map(({ frequencyHz }) => frequencyHz),
+    foldScore: score?.score ?? 0,
+  });
+  if (protection !== null && features !== null) {
+    const { bound, isProtected, worstShareDb } = protection;
     const isDamaged = integrity.some(
       ({ kind, severity }) => severity === 'unproven' && kind !== 'rateDisagrees' && kind !== 'tooShort',
     );
+    const foldConfidence = score?.score ?? 0;
     findings.push(
-      ...judgeEdge(record, thresholds, {
-        bandEdge,
-        bound,
-        features,
-        foldConfidence: score?.score ?? 0,
-        isDamaged,
-        isProtected,
-      }),
+      ...protection.findings,
+      ...judgeEdge(record, thresholds, { bandEdge, bound, features, foldConfidence, isDamaged, isProtected }),
     );
+    findings.push(...methodsDisagree(findings, thresholds, { isProtected, worstShareDb }));
   }
   const order = { fold: 0, unproven: 1, limit: 2, note: 3 } as const;
   findings.sort((a, b) => order[a.severity] - order[b.severity] || b.confidence - a.confidence);
@@ -79,15 +55,22 @@ export function judgeChannel(
     foldScore: score?.score ?? null,
     foldLogLikelihoodRatio: score?.logLikelihoodRatio ?? null,
     foldPrior,
-    clearToHz,
+    clearToHz: protection?.clearToHz ?? null,
     protectionDb: thresholds.requiredProtectionDb,
-    contaminationBoundDb: bound?.edgeUpperDb ?? null,
+    contaminationBoundDb: protection?.bound.edgeUpperDb ?? null,
     bandOfInterestHz: band,
     guardStartHz: rateHz === null ? null : (thresholds.guardStart * rateHz) / 2,
     bandEdge,
-    tones: [...tones.tones].sort((a, b) => a.frequencyHz - b.frequencyHz),
+    tones: [...evidence.tones].sort((a, b) => a.frequencyHz - b.frequencyHz),
     findings,
   };
+}
+
+/** Every method that applies, side by side. */
+function gatherEvidence(record: MeasurementRecord, thresholds: Thresholds, sheet: AcquisitionSheet): FoldEvidence {
+  if (record.irregular !== null) return judgeIrregular(record.irregular, thresholds);
+  const binHz = record.durationS === null || record.durationS === 0 ? 0 : 1 / record.durationS;
+  return joinEvidence([judgeTones(record, thresholds, sheet)], binHz);
 }
 
 /** From the sheet; without one from 0 Hz to fs over the practice factor. */

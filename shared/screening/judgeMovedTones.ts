@@ -1,15 +1,16 @@
 import type { Tone } from '../schemas/screening.js';
-import { aliasHz, candidatesHz } from './foldArithmetic.js';
-import { matchSigmas, toneErrorHz } from './harmonicFamily.js';
+import { companionGainDb } from './companionGain.js';
+import { formatHz } from './formatNumber.js';
+import { poissonTail } from './harmonicFamily.js';
+import { judgeMove } from './judgeMove.js';
+import { matchMovedTones } from './matchMovedTones.js';
 import type { CompanionMeasurement, ToneMeasurement } from './MeasurementRecord.js';
-
-/** Companion tones weaker than the tone by more than this are no counterpart: filters and sensors differ, sources don't. */
-const largestLevelStepDb = 15;
 
 /**
  * Tones of the same event in a capture at another rate: one that stands elsewhere there has moved and is folded; its true
- * frequency solves |f − n1·fs1| = fa1 and |f − n2·fs2| = fa2, smallest zones first (Xia 1999). A tone at the same place
- * in both stays as it is: it is true, or one of the frequencies that both rates fold alike.
+ * frequency solves |f − n1·fs1| = fa1 and |f − n2·fs2| = fa2, smallest zones first (Xia 1999). A tone at the same place in both
+ * stays as it is. As many moves as were found have to be unlikely by chance too: among many tones that the companion doesn't
+ * show, some would find a place by accident.
  * Changes the tones' explanations.
  */
 export function judgeMovedTones(
@@ -20,43 +21,39 @@ export function judgeMovedTones(
   binHz: number,
   reachHz: number,
 ): void {
-  const otherRateHz = companion.sampleRateHz;
-  const otherBinHz = companion.durationS > 0 ? 1 / companion.durationS : binHz;
-  if (Math.abs(otherRateHz / sampleRateHz - 1) < 1e-6) return;
-  measured.forEach((tone, index) => {
-    const sigma = toneErrorHz(tone, binHz);
-    const others = companion.tones.filter((other) => Math.abs(other.levelDb - tone.levelDb) < largestLevelStepDb);
-    const near = (frequencyHz: number) =>
-      companion.tones.find(
-        (other) =>
-          Math.abs(other.frequencyHz - frequencyHz) <= matchSigmas * Math.hypot(sigma, toneErrorHz(other, otherBinHz)),
-      );
-    if (tone.frequencyHz >= 0.98 * (otherRateHz / 2) || near(tone.frequencyHz) !== undefined) return;
-    const candidates = candidatesHz(tone.frequencyHz, sampleRateHz, reachHz).slice(1);
-    let tried = 0;
-    for (const trueHz of candidates) {
-      const expectedHz = aliasHz(trueHz, otherRateHz);
-      tried++;
-      const match = others
-        .filter(
-          (other) =>
-            Math.abs(other.frequencyHz - expectedHz) <= matchSigmas * Math.hypot(sigma, toneErrorHz(other, otherBinHz)),
-        )
-        .sort((a, b) => Math.abs(a.frequencyHz - expectedHz) - Math.abs(b.frequencyHz - expectedHz))[0];
-      if (match === undefined) continue;
-      const tolerance = matchSigmas * Math.hypot(sigma, toneErrorHz(match, otherBinHz));
-      // A tone of the companion that also stands here is explained without folding.
-      const standsHere = measured.some((own) => Math.abs(own.frequencyHz - match.frequencyHz) <= tolerance);
-      if (standsHere) continue;
-      const chance = Math.min(1, tried * (1 - Math.exp(-2 * tolerance * match.peaksPerHz)));
-      Object.assign(tones[index] as Tone, {
+  if (Math.abs(companion.sampleRateHz / sampleRateHz - 1) < 1e-6) return;
+  const moves = companion.moves ?? null;
+  if (moves === null) return matchMovedTones(tones, measured, companion, sampleRateHz, binHz, reachHz);
+  const gainDb = companionGainDb(moves);
+  if (gainDb === null) return;
+  const judged = measured.map((tone) => {
+    const move = moves.find(({ frequencyHz }) => frequencyHz === tone.frequencyHz);
+    return move === undefined ? null : { move, ...judgeMove(move, tone, companion, gainDb) };
+  });
+  const moved = judged.filter((one) => one?.outcome === 'moved');
+  const expected = judged.reduce(
+    (sum, one) => sum + (one === null || one.outcome === 'stays' || one.outcome === 'ambiguous' ? 0 : chanceAt(one)),
+    0,
+  );
+  const together = poissonTail(moved.length, expected);
+  judged.forEach((one, index) => {
+    const tone = tones[index];
+    if (one === null || tone === undefined || one.place === null) return;
+    if (one.outcome === 'moved') {
+      const chance = Math.max(one.chanceProbability, together);
+      Object.assign(tone, {
         explanation: 'movedBetweenRates',
-        trueFrequencyHz: trueHz,
+        trueFrequencyHz: one.place.trueHz,
         confidence: 1 - chance,
         chanceProbability: chance,
-        explainedBy: `${companion.name} at ${otherRateHz} Hz shows it at ${match.frequencyHz.toPrecision(6)} Hz`,
+        explainedBy: `${companion.name} at ${companion.sampleRateHz} Hz shows it at ${formatHz(one.place.expectedHz)}`,
       } satisfies Partial<Tone>);
-      return;
-    }
+    } else tone.candidatesHz = one.candidatesHz;
   });
+
+  function chanceAt(one: { chanceProbability: number; outcome: string }): number {
+    const typical =
+      moved.reduce((sum, { chanceProbability }) => sum + chanceProbability, 0) / Math.max(1, moved.length);
+    return one.outcome === 'moved' ? one.chanceProbability : typical;
+  }
 }
