@@ -1,12 +1,11 @@
 import { basename } from 'node:path';
 import { engineVersion } from '../shared/constants/engineVersion.js';
-import { CaptureError } from '../shared/formats/CaptureError.js';
 import type { AcquisitionSheet } from '../shared/schemas/acquisitionSheet.js';
 import type { CsvLayout } from '../shared/schemas/csvLayout.js';
 import type { ChannelScreen } from '../shared/schemas/screening.js';
 import type { Thresholds } from '../shared/schemas/thresholds.js';
-import { judgeChannel } from '../shared/screening/judgeChannel.js';
-import type { CompanionMeasurement } from '../shared/screening/MeasurementRecord.js';
+import { judgeChannels } from '../shared/screening/judgeChannels.js';
+import { addCompanion, type CompanionFile } from './companion/addCompanion.js';
 import type { ChannelMeasurement } from './measure/ChannelMeasurement.js';
 import { measureCapture, type MeasureOptions } from './measure/measureCapture.js';
 import { openCapture } from './readers/openCapture.js';
@@ -18,7 +17,7 @@ export interface ScreenFileOptions extends MeasureOptions {
   /** Name shown in results; the path's last part otherwise. */
   fileName?: string;
   /** File of the same event at another rate. */
-  companion?: { path: string; name: string; sheet: AcquisitionSheet } | null;
+  companion?: CompanionFile | null;
 }
 
 export interface ScreenedFile {
@@ -42,8 +41,12 @@ export function screenFile(filePath: string, options: ScreenFileOptions): Screen
   const source = openCapture(filePath, { acquisition: sheet, csvLayout: csvLayout ?? null, fileName: file });
   try {
     const measurements = measureCapture(source, sheet, options);
-    if (companion) addCompanion(measurements, companion, options);
-    const judgements = measurements.map(({ record }) => judgeChannel(record, thresholds, sheet));
+    if (companion) addCompanion(source, measurements, companion, options);
+    const judgements = judgeChannels(
+      measurements.map(({ record }) => record),
+      thresholds,
+      sheet,
+    );
     const elapsedMs = Math.round(performance.now() - startedMs);
     return {
       format: source.format,
@@ -70,44 +73,5 @@ export function screenFile(filePath: string, options: ScreenFileOptions): Screen
     };
   } finally {
     source.close();
-  }
-}
-
-/** Puts the companion's tones into each record; one that can't be read is noted, not fatal. */
-function addCompanion(
-  measurements: ChannelMeasurement[],
-  companion: { path: string; name: string; sheet: AcquisitionSheet },
-  options: MeasureOptions,
-): void {
-  try {
-    const source = openCapture(companion.path, {
-      acquisition: companion.sheet,
-      csvLayout: null,
-      fileName: companion.name,
-    });
-    try {
-      const others = measureCapture(
-        source,
-        companion.sheet,
-        options.signal === undefined ? {} : { signal: options.signal },
-      );
-      measurements.forEach(({ record }, channel) => {
-        const other = (others[channel] ?? others[0])?.record;
-        if (other === undefined || other.sampleRateHz === null) return;
-        const measured: CompanionMeasurement = {
-          name: companion.name,
-          sampleRateHz: other.sampleRateHz,
-          durationS: other.durationS ?? 0,
-          tones: other.tones,
-        };
-        record.companion = measured;
-      });
-    } finally {
-      source.close();
-    }
-  } catch (error) {
-    if (!(error instanceof CaptureError)) throw error;
-    const message = `The companion ${companion.name} can't be read: ${error.message}`;
-    for (const { record } of measurements) record.warnings.push({ code: 'COMPANION_MISSING', message });
   }
 }

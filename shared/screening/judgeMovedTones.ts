@@ -30,12 +30,10 @@ export function judgeMovedTones(
     const move = moves.find(({ frequencyHz }) => frequencyHz === tone.frequencyHz);
     return move === undefined ? null : { move, ...judgeMove(move, tone, companion, gainDb) };
   });
-  const moved = judged.filter((one) => one?.outcome === 'moved');
-  const expected = judged.reduce(
-    (sum, one) => sum + (one === null || one.outcome === 'stays' || one.outcome === 'ambiguous' ? 0 : chanceAt(one)),
-    0,
-  );
-  const together = poissonTail(moved.length, expected);
+  const moved = judged.flatMap((one) => (one?.outcome === 'moved' ? [one.chanceProbability] : []));
+  const unplaced = judged.filter((one) => one?.outcome === 'absent' || one?.outcome === 'hidden').length;
+  const typical = moved.reduce((sum, chance) => sum + chance, 0) / Math.max(1, moved.length);
+  const together = poissonTail(moved.length, typical * (moved.length + unplaced));
   judged.forEach((one, index) => {
     const tone = tones[index];
     if (one === null || tone === undefined || one.place === null) return;
@@ -50,10 +48,4 @@ export function judgeMovedTones(
       } satisfies Partial<Tone>);
     } else tone.candidatesHz = one.candidatesHz;
   });
-
-  function chanceAt(one: { chanceProbability: number; outcome: string }): number {
-    const typical =
-      moved.reduce((sum, { chanceProbability }) => sum + chanceProbability, 0) / Math.max(1, moved.length);
-    return one.outcome === 'moved' ? one.chanceProbability : typical;
-  }
 }

@@ -1,0 +1,38 @@
+import type { AcquisitionSheet } from '../../shared/schemas/acquisitionSheet.js';
+import type { CompanionMeasurement, MeasurementRecord } from '../../shared/screening/MeasurementRecord.js';
+import { alignCaptures } from './alignCaptures.js';
+import { measureMoves } from './measureMoves.js';
+import type { Excerpt } from './readExcerpt.js';
+
+/** Highest frequency looked for where the sheet states no sensor band, as a multiple of the higher rate. */
+const defaultReach = 2;
+/** Below this chance the cross-correlation shows one event in both captures. */
+const alignedChance = 1e-4;
+
+/** Compares one channel of a capture with its companion's: the lag, and where each tone stands in the companion. */
+export function measureCompanion(
+  name: string,
+  own: { record: MeasurementRecord; samples: Float64Array; rateHz: number },
+  other: { record: MeasurementRecord; samples: Float64Array; rateHz: number },
+  sheet: AcquisitionSheet,
+): CompanionMeasurement {
+  const alignment = alignCaptures(own.samples, own.rateHz, other.samples, other.rateHz);
+  const lagS = alignment !== null && alignment.chanceProbability < alignedChance ? alignment.lagS : null;
+  const reachHz = sheet.sensorBandHz ?? defaultReach * Math.max(own.rateHz, other.rateHz);
+  return {
+    name,
+    sampleRateHz: other.rateHz,
+    durationS: other.record.durationS ?? 0,
+    tones: other.record.tones,
+    alignment,
+    moves: measureMoves(own, other, lagS, own.record.tones, reachHz),
+  };
+}
+
+/** The companion's channel that goes with a channel: the one of the same name, else of the same number, else the first. */
+export function pairedChannel(record: MeasurementRecord, others: MeasurementRecord[], excerpt: Excerpt): number {
+  const named =
+    record.channelName === '' ? -1 : others.findIndex(({ channelName }) => channelName === record.channelName);
+  if (named >= 0) return named;
+  return record.channel < excerpt.channels.length ? record.channel : 0;
+}
