@@ -8,6 +8,7 @@ import { foldPrior, foldScore } from './foldScore.js';
 import { bandEdgeFigures, judgeEdge } from './judgeEdge.js';
 import { judgeIntegrity } from './judgeIntegrity.js';
 import { judgeIrregular } from './judgeIrregular.js';
+import { judgeLockedSources } from './judgeLockedSources.js';
 import { judgeProtection } from './judgeProtection.js';
 import { judgeTones } from './judgeTones.js';
 import type { MeasurementRecord } from './MeasurementRecord.js';
@@ -30,7 +31,7 @@ export function judgeChannel(
   const features = record.irregular === null ? foldFeatures(record) : null;
   const score = foldScore(features, evidence.logRatio, evidence.shownConfidence);
   const bandEdge = bandEdgeFigures(record, thresholds, band, sheet.noiseFloorDb);
-  const findings: Finding[] = [...evidence.findings, ...integrity];
+  const findings: Finding[] = [...evidence.findings, ...integrity, ...judgeLockedSources(record, thresholds, sheet)];
   const protection = judgeProtection(record, thresholds, sheet, {
     band,
     foldedHz: evidence.tones.filter(isFoldedTone).map(({ frequencyHz }) => frequencyHz),
