@@ -13,7 +13,7 @@ export default defineConfig({
         test: {
           name: 'node',
           environment: 'node',
-          include: ['tests/{shared,server,worker}/**/*.test.ts'],
+          include: ['tests/{shared,server,worker,bench}/**/*.test.ts'],
           exclude: ['**/*.integration.test.ts'],
           testTimeout: 30_000,
         },

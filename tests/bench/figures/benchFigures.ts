@@ -7,6 +7,7 @@ import { type GroupFigures, groupFigures } from './groupFigures.js';
 import { isClearable } from './isClearable.js';
 import { isClean, isFolded, type MethodFigures, methodFigures } from './methodFigures.js';
 import { type RaisedRateFigures, raisedRateFigures } from './raisedRateFigures.js';
+import { type ReasonFigures, reasonFigures } from './reasonFigures.js';
 import { screeningMethods } from './screeningMethods.js';
 import { type ShareFigure, shareFigure } from './shareFigure.js';
 import { type ToneFigures, toneFigures } from './toneFigures.js';
@@ -26,6 +27,8 @@ export interface BenchFigures {
   otherCleanHeldBack: ShareFigure;
   /** Nothing can be said: `unproven` is the right answer. */
   naUnproven: ShareFigure;
+  /** Why clean captures are not called clear. */
+  reasons: ReasonFigures[];
   raisedRate: RaisedRateFigures;
   tones: { group: string; figures: ToneFigures }[];
   clearTo: ClearToFigures;
@@ -76,6 +79,7 @@ export function benchFigures(all: readonly ScreenedCapture[]): BenchFigures {
     ),
     otherCleanHeldBack: shareFigure(others, ({ verdict }) => verdict === 'limited' || verdict === 'unproven'),
     naUnproven: shareFigure(withLabel('na'), ({ verdict, failure }) => verdict === 'unproven' || failure !== null),
+    reasons: [...reasonFigures('clearable', clearable), ...reasonFigures('not clearable', others)],
     raisedRate: raisedRateFigures(all),
     tones: toneGroups(all),
     clearTo: clearToFigures(all.filter(({ truth }) => truth.label !== 'na')),

@@ -1,7 +1,7 @@
 import { verdicts } from '../../../shared/schemas/screening.js';
 import type { BenchFigures } from '../figures/benchFigures.js';
 import type { GroupFigures } from '../figures/groupFigures.js';
-import { countText, shareText } from './formatFigures.js';
+import { countText, percent, shareText } from './formatFigures.js';
 import type { ReportTable } from './ReportTable.js';
 
 export function evidenceTable({ evidence }: BenchFigures): ReportTable {
@@ -33,6 +33,31 @@ export function toneTable({ tones }: BenchFigures): ReportTable {
     notes: [
       'Uniform captures. Not to be judged: reported on folded captures whose list of true tones is cut off or moving.',
     ],
+  };
+}
+
+export function reasonTable({ reasons }: BenchFigures): ReportTable {
+  return {
+    title: 'Why clean captures are not called clear',
+    columns: ['clean captures', 'verdict', 'gravest finding'],
+    rows: reasons.map(({ group, verdict, kinds }) => [
+      group,
+      verdict,
+      kinds.map(({ kind, count }) => `${count} ${kind}`).join(', '),
+    ]),
+    notes: [],
+  };
+}
+
+export function reliabilityTable({ calibration }: BenchFigures): ReportTable {
+  return {
+    title: 'Fold score: stated against seen, half of the captures folded',
+    columns: ['captures taken', ...Array.from({ length: 10 }, (_, bin) => `tenth ${bin + 1}`)],
+    rows: calibration.map(({ population, bins }) => [
+      population,
+      ...bins.map(({ stated, seen }) => `${percent(stated)}: ${percent(seen)}`),
+    ]),
+    notes: ['Tenths of equal count by rising score: mean score, then the share that is folded.'],
   };
 }
 

@@ -1,5 +1,5 @@
 import type { BenchFigures } from '../figures/benchFigures.js';
-import { evidenceTable, groupTables, toneTable } from './detailTables.js';
+import { evidenceTable, groupTables, reasonTable, reliabilityTable, toneTable } from './detailTables.js';
 import { engineTable, methodTable } from './headlineTables.js';
 import type { ReportTable } from './ReportTable.js';
 
@@ -26,6 +26,8 @@ export function reportTables(figures: BenchFigures): ReportTable[] {
     engineTable(figures),
     evidenceTable(figures),
     toneTable(figures),
+    reasonTable(figures),
+    reliabilityTable(figures),
     ...groupTables(figures),
   ];
 }
