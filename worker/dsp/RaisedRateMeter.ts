@@ -3,7 +3,9 @@ const phases = 840;
 export const raisedFactors = [2, 3, 4, 5, 6, 7, 8] as const;
 /** Between the knots of a raised capture nearly every difference is nothing; at the knots most are something. */
 const leastStillShare = 0.95;
-const largestKnotShare = 0.6;
+const largestKnotShare = 0.9;
+/** How many standard errors the knots must differ from the places between them: no chance of it in any archive. */
+const leastSigmas = 6;
 const leastPerPhase = 40;
 /** Differences within this many steps of the converter are nothing: three roundings come together in a second difference. */
 const toleranceSteps = 2.5;
@@ -71,17 +73,21 @@ export class RaisedRateMeter {
   }
 
   private fits(factor: number, still: Uint32Array): number | null {
+    let perPhase = Infinity;
     const stillShares = Array.from({ length: factor }, (_, phase) => {
       let [quiet, all] = [0, 0];
       for (let place = phase; place < phases; place += factor) {
         quiet += still[place] as number;
         all += this.counts[place] as number;
       }
+      perPhase = Math.min(perPhase, all);
       return all < leastPerPhase ? null : quiet / all;
     });
     if (stillShares.includes(null)) return null;
     const sorted = (stillShares as number[]).sort((a, b) => a - b);
     const [knot, following] = [sorted[0] as number, sorted[1] as number];
-    return following >= leastStillShare && knot <= largestKnotShare ? following : null;
+    const error = Math.sqrt(Math.max(following * (1 - following), 1 / perPhase) / perPhase);
+    const differs = following - knot > leastSigmas * error;
+    return following >= leastStillShare && knot <= largestKnotShare && differs ? following : null;
   }
 }

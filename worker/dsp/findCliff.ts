@@ -14,19 +14,19 @@ export interface CliffSearch {
 }
 
 /**
- * 40 dB within a twelfth of the frequency, 330 dB an octave: no analogue filter is as steep. In the upper fifth of the
+ * 30 dB within a twelfth of the frequency, 240 dB an octave: no analogue filter is as steep. In the upper fifth of the
  * band a converter's own decimating filter is.
  */
-export const digitalCliff: CliffSearch = { leastDepthDb: 40, highestShare: 0.8 };
+export const digitalCliff: CliffSearch = { leastDepthDb: 30, highestShare: 0.8 };
 /** Below the old folding frequency of a capture whose rate was raised, any steep fall is the end of its content. */
 export const oldBandEnd: CliffSearch = { leastDepthDb: 20, highestShare: 1 };
 const widthShare = 1 / 12;
 /** Above the cliff no more than this share of the power is left (images of a short interpolating filter included). */
-const largestRestShare = 1e-3;
+const largestRestShare = 1e-2;
 const halfPower = 0.5;
 
 /**
- * The lowest frequency at which the density breaks off like a digital low-pass: by at least 40 dB within a twelfth of its
+ * The lowest frequency at which the density breaks off like a digital low-pass: by at least 30 dB within a twelfth of its
  * frequency, with next to nothing above. Filters in front of a converter fall more gently (common practice: up to 8 poles,
  * some 100 dB an octave), so such a cliff well below fs/2 was made after sampling: the rate was raised, or the capture filtered.
  * @param density one-sided, linear, without tones, bin k at k·resolutionHz; @returns null without a cliff there
@@ -37,7 +37,7 @@ export function findCliff(
   { leastDepthDb, highestShare }: CliffSearch = digitalCliff,
 ): Cliff | null {
   const last = density.length - 1;
-  const smooth = smoothDensity(density, last / 512);
+  const smooth = smoothDensity(density, last / 1024);
   const restOf = new Float64Array(last + 2);
   for (let bin = last; bin >= 0; bin--) restOf[bin] = (restOf[bin + 1] as number) + (density[bin] as number);
   const total = restOf[1] as number;

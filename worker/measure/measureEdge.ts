@@ -50,14 +50,18 @@ export function measureEdge(
   };
 }
 
+/** An end of the content further down is the source's, not that of the old recording's filter. */
+const leastContentShare = 0.75;
+
 /** The old folding frequency, the end of the content below it, and the density next to it: the edge of the old recording. */
 function describeRaised(raised: RaisedRate, toneless: Float64Array, resolutionHz: number): RaisedMeasurement {
   const pivotBin = Math.floor((toneless.length - 1) / raised.factor);
   const oldBand = toneless.subarray(0, pivotBin + 1);
+  const contentTo = findCliff(oldBand, resolutionHz, oldBandEnd)?.edgeHz ?? null;
   return {
     ...raised,
     pivotHz: pivotBin * resolutionHz,
-    contentToHz: findCliff(oldBand, resolutionHz, oldBandEnd)?.edgeHz ?? null,
+    contentToHz: contentTo !== null && contentTo > leastContentShare * pivotBin * resolutionHz ? contentTo : null,
     edgeDensityDb: decibels(meanOver(oldBand, Math.max(1, Math.floor(0.97 * pivotBin)), Math.max(1, pivotBin - 2))),
   };
 }
