@@ -5,8 +5,8 @@ import { parseCsv } from './parseCsv.js';
 
 const labels = ['folded', 'grey', 'clean', 'na'] as const;
 const needed = ['file', 'part', 'family', 'label', 'fs_hz', 'band_fold_db', 'tones_true_hz', 'tones_folded_hz'];
-/** The lists name the strongest lines only: as many as this, and there may be more. */
-const longestList = { real: 6, synthetic: 8 } as const;
+/** The lists name the strongest lines only: as many as this, and there may be more. A recording may always hold more. */
+const longestList = 8;
 
 /**
  * Reads DIR/labels.csv: one row a capture, lists with |, columns in any order.
@@ -25,7 +25,6 @@ export function readLabelledSet(directory: string, set = directory): LabelledCap
     if (label === undefined)
       throw new Error(`${path}, row ${index + 2}: the label "${cell('label')}" is none of ${labels.join(', ')}.`);
     const tones = readTones(list('tones_true_hz'), list('tones_folded_hz'), list('tones_visible'));
-    const longest = cell('part') === 'real' ? longestList.real : longestList.synthetic;
     return {
       set,
       path: join(directory, cell('file')),
@@ -40,7 +39,8 @@ export function readLabelledSet(directory: string, set = directory): LabelledCap
       isIrregular: cell('csv_variant') === 'irregular',
       bandFoldDb: list('band_fold_db').map(Number),
       tones: tones.filter(({ trueHz }) => trueHz >= Number(cell('fs_hz')) / 2),
-      hasAllTones: tones.length < longest && tones.every(({ foldedHz }) => foldedHz !== null),
+      hasAllTones:
+        cell('part') !== 'real' && tones.length < longestList && tones.every(({ foldedHz }) => foldedHz !== null),
       isRateRaised: cell('bandwidth_label') === 'upsampled',
       trueBandwidthHz: numberOrNull(cell('true_bandwidth_hz')),
       defects: list('defects'),
