@@ -7,7 +7,7 @@ import { formatDb, formatHz } from './formatNumber.js';
 const largestClearScore = 0.3;
 
 export interface Protection extends ClearTo {
-  /** Worst-case folded energy over the power in the band of interest, dB. */
+  /** Worst-case folded energy over the power in the stated band, or in the whole capture where none is stated, dB. */
   worstShareDb: number;
   /** Half the rate of the capture. */
   foldingFrequencyHz: number;
@@ -56,7 +56,7 @@ export function clearToFindings(
     method:
       'smoothed density over the contamination bound, unbroken from the lowest frequency; the bound summed over the band',
   };
-  const whole = `All that can be folded into the band of interest is ${formatDb(worstShareDb)} of the power in it`;
+  const whole = `All that can be folded into the band is at most ${formatDb(worstShareDb)} of the power in it`;
   const findings: Finding[] = [];
   if (clearToHz === null && !isProtected) {
     findings.push({

@@ -38,7 +38,12 @@ export function judgeProtection(
       sampleRateHz,
       stopsHz: isOldRate ? [...foldedHz, bound.foldingFrequencyHz] : foldedHz,
     }),
-    worstShareDb: worstFoldedShareDb(profile, bound, band),
+    // Without a stated band the statement is about the whole capture.
+    worstShareDb: worstFoldedShareDb(
+      profile,
+      bound,
+      sheet.highestFrequencyHz === undefined ? [band[0], sampleRateHz / 2] : band,
+    ),
     foldingFrequencyHz: sampleRateHz / 2,
     isRaised: oldRate(record) !== null,
   };
