@@ -5,6 +5,7 @@ export const usage = `npm run bench:screening -- [options]
   --make COMMAND          makes labelled sets: called as COMMAND --seed N --out DIR; also OVERFOLD_LABELLED_SET_COMMAND
   --seeds N[,N…]          the seeds to call it with; each set is deleted once screened
   --builtin N[,N…]        seeds of the built-in synthetic set; alone without any of these: seed 1
+  --monte-carlo N         runs of each simulated case: tone estimator against its bound, clean noise; alone: no set
   --per-family N          captures of each built-in family (default 4)
   --no-pairs              screens the two files of a pair apart
   --threads N             computing threads (default: one a core)
@@ -18,6 +19,7 @@ export interface BenchArguments {
   seeds: string[];
   builtinSeeds: number[];
   perFamily: number;
+  monteCarloRuns: number | null;
   withPairs: boolean;
   threads: number | null;
   list: boolean;
@@ -35,6 +37,7 @@ export function benchArguments(args: string[], environment: Record<string, strin
       seeds: { type: 'string' },
       builtin: { type: 'string' },
       'per-family': { type: 'string', default: '4' },
+      'monte-carlo': { type: 'string' },
       'no-pairs': { type: 'boolean', default: false },
       threads: { type: 'string' },
       list: { type: 'boolean', default: false },
@@ -50,13 +53,14 @@ export function benchArguments(args: string[], environment: Record<string, strin
   if (values.make !== undefined && seeds.length === 0)
     throw new Error('--make needs --seeds: which sets is the command to make?');
   const directories = list(values.corpus);
-  const isAlone = directories.length === 0 && seeds.length === 0;
+  const isAlone = directories.length === 0 && seeds.length === 0 && values['monte-carlo'] === undefined;
   return {
     directories,
     command,
     seeds,
     builtinSeeds: list(values.builtin ?? (isAlone ? '1' : '')).map((one) => wholeNumber(one, '--builtin')),
     perFamily: wholeNumber(values['per-family'], '--per-family'),
+    monteCarloRuns: values['monte-carlo'] === undefined ? null : wholeNumber(values['monte-carlo'], '--monte-carlo'),
     withPairs: !values['no-pairs'],
     threads: values.threads === undefined ? null : wholeNumber(values.threads, '--threads'),
     list: values.list,

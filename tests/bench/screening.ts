@@ -4,7 +4,9 @@ import { basename, join } from 'node:path';
 import { benchArguments, type BenchArguments, usage } from './benchArguments.js';
 import { benchFigures } from './figures/benchFigures.js';
 import { markdownReport } from './report/markdownReport.js';
+import { runMonteCarlo } from './monteCarlo/runMonteCarlo.js';
 import { missTables } from './report/missTables.js';
+import { monteCarloTables } from './report/monteCarloTables.js';
 import { reportTables } from './report/reportTables.js';
 import { textReport } from './report/textReport.js';
 import type { ScreenedCapture } from './screening/ScreenedCapture.js';
@@ -55,11 +57,18 @@ async function run(given: BenchArguments): Promise<void> {
   const all: ScreenedCapture[] = [];
   // One set after the other: only one needs room on the disk.
   for (const set of setsOf(given)) all.push(...(await screenOne(set, given)));
-  const figures = benchFigures(all);
-  const tables = reportTables(figures);
-  console.log(textReport(given.list ? [...tables, ...missTables(all, figures)] : tables));
+  const figures = all.length === 0 ? null : benchFigures(all);
+  const monteCarlo =
+    given.monteCarloRuns === null
+      ? null
+      : await runMonteCarlo(given.monteCarloRuns, {
+          ...(given.threads === null ? {} : { threads: given.threads }),
+          onProgress: (text) => console.error(text),
+        });
+  const tables = [...(figures ? reportTables(figures) : []), ...(monteCarlo ? monteCarloTables(monteCarlo) : [])];
+  console.log(textReport(given.list && figures ? [...tables, ...missTables(all, figures)] : tables));
   if (given.markdownPath !== null) writeFileSync(given.markdownPath, markdownReport(tables));
-  if (given.jsonPath !== null) writeFileSync(given.jsonPath, JSON.stringify({ figures, captures: all }));
+  if (given.jsonPath !== null) writeFileSync(given.jsonPath, JSON.stringify({ figures, monteCarlo, captures: all }));
 }
 
 try {
