@@ -10,12 +10,25 @@ export interface FoldedMatch {
 
 const highestFold = 3;
 const leastMatches = 2;
+/** Combs tried for a family: each fold, both sides. */
+export const combsPerFamily = 2 * highestFold;
+/** Subharmonics (half orders of an engine, two machines on one belt) stand at these parts of the spacing in their own right. */
+const ownParts = [0, 1 / 4, 1 / 3, 1 / 2, 2 / 3, 3 / 4, 1];
+
+interface Match {
+  tone: number;
+  multiple: number;
+  trueHz: number;
+  distanceHz: number;
+  errorHz: number;
+}
 
 /**
  * Folded members of a family. At steady speed all members that fold about m·fs lie on one comb of spacing f0 with offset
  * ±(m·fs mod f0): they are one prediction, of chance 2t/f0 for each comb tried, because a carrier with side-bands imitates a
- * comb exactly; and as many tones as were found have to be unlikely by chance too. The weaker of both statements counts.
- * A comb that falls on the family itself (offset near 0) shows nothing and is left out.
+ * comb exactly; t is how far the farthest of the tones really lies off, and what it is uncertain by. As many tones as were
+ * found have to be unlikely by chance too: the weaker of both statements counts. A comb that falls on the family itself or on
+ * its subharmonics shows nothing and is left out, and so is a tone in the skirt of a stronger member that wanders.
  * @param free tones that nothing in band explains
  */
 export function foldedComb(
@@ -26,27 +39,18 @@ export function foldedComb(
   binHz: number,
   combsTried: number,
 ): FoldedMatch[] {
-  const { fundamentalHz: spacing, fundamentalErrorHz } = family;
+  const spacingHz = family.fundamentalHz;
+  const candidates = free.filter((index) => !isInSkirt(tones, index, family));
   const found: FoldedMatch[] = [];
   for (let fold = 1; fold <= highestFold; fold++) {
     for (const side of [-1, 1] as const) {
-      const matches: { tone: number; multiple: number; trueHz: number }[] = [];
-      let expected = 0;
-      let tolerances = 0;
-      for (const index of free) {
-        const tone = tones[index] as ToneMeasurement;
-        const trueHz = fold * sampleRateHz + side * tone.frequencyHz;
-        const multiple = Math.round(trueHz / spacing);
-        const tolerance = matchSigmas * Math.hypot(toneErrorHz(tone, binHz), multiple * fundamentalErrorHz);
-        expected += Math.min(1, (2 * tolerance) / spacing);
-        const ownDistance = Math.abs(tone.frequencyHz - spacing * Math.round(tone.frequencyHz / spacing));
-        if (tolerance > 0.15 * spacing || ownDistance < tolerance) continue;
-        if (Math.abs(trueHz - multiple * spacing) > tolerance) continue;
-        matches.push({ tone: index, multiple, trueHz: multiple * spacing });
-        tolerances += tolerance;
-      }
+      const offset = ((((side * fold * sampleRateHz) % spacingHz) + spacingHz) % spacingHz) / spacingHz;
+      const { matches, expected, toleranceHz } = matchComb(tones, candidates, family, fold * sampleRateHz, side, binHz);
       if (matches.length < leastMatches) continue;
-      const asOneComb = (2 * (tolerances / matches.length)) / spacing;
+      const leastDistance = Math.max(2 * toleranceHz, 2 * binHz) / spacingHz;
+      if (ownParts.some((part) => Math.abs(offset - part) < leastDistance)) continue;
+      const farthestHz = matches.reduce((most, one) => Math.max(most, one.distanceHz + one.errorHz), 0);
+      const asOneComb = (2 * farthestHz) / spacingHz;
       const asMany = poissonTail(matches.length, expected);
       const chance = Math.min(1, Math.max(asOneComb, asMany) * combsTried);
       for (const { tone, multiple, trueHz } of matches) {
@@ -55,4 +59,52 @@ export function foldedComb(
     }
   }
   return found.sort((a, b) => a.chanceProbability - b.chanceProbability || a.trueFrequencyHz - b.trueFrequencyHz);
+}
+
+function matchComb(
+  tones: ToneMeasurement[],
+  candidates: number[],
+  { fundamentalHz, fundamentalErrorHz }: HarmonicFamily,
+  centreHz: number,
+  side: -1 | 1,
+  binHz: number,
+): { matches: Match[]; expected: number; toleranceHz: number } {
+  const matches: Match[] = [];
+  let expected = 0;
+  let widestHz = 0;
+  for (const index of candidates) {
+    const tone = tones[index] as ToneMeasurement;
+    const placeHz = centreHz + side * tone.frequencyHz;
+    const multiple = Math.round(placeHz / fundamentalHz);
+    const toleranceHz = matchSigmas * Math.hypot(toneErrorHz(tone, binHz), multiple * fundamentalErrorHz);
+    expected += Math.min(1, (2 * toleranceHz) / fundamentalHz);
+    const distanceHz = Math.abs(placeHz - multiple * fundamentalHz);
+    if (toleranceHz > 0.15 * fundamentalHz || distanceHz > toleranceHz) continue;
+    widestHz = Math.max(widestHz, toleranceHz);
+    matches.push({
+      tone: index,
+      multiple,
+      trueHz: multiple * fundamentalHz,
+      distanceHz,
+      errorHz: Math.hypot(tone.boundHz, tone.wanderHz, multiple * fundamentalErrorHz),
+    });
+  }
+  return { matches, expected, toleranceHz: widestHz };
+}
+
+/** Within this many times a member's wander, and this much weaker, a line is the member's own skirt. */
+const skirtWanders = 12;
+const skirtDb = 6;
+
+function isInSkirt(tones: ToneMeasurement[], index: number, family: HarmonicFamily): boolean {
+  const tone = tones[index] as ToneMeasurement;
+  return family.members.some(({ tone: place, multiple }) => {
+    const member = tones[place] as ToneMeasurement;
+    // A speed that wanders spreads every member in proportion, also one whose own wander was too faint to measure.
+    const wanderHz = Math.max(member.wanderHz, multiple * family.relativeWander * family.fundamentalHz);
+    return (
+      member.levelDb > tone.levelDb + skirtDb &&
+      Math.abs(member.frequencyHz - tone.frequencyHz) < skirtWanders * wanderHz
+    );
+  });
 }

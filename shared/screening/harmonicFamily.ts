@@ -4,6 +4,8 @@ export interface HarmonicFamily {
   name: string;
   fundamentalHz: number;
   fundamentalErrorHz: number;
+  /** Median of the members' wander over their frequency: how far the speed itself wanders. */
+  relativeWander: number;
   /** Index of the tone and its multiple. */
   members: { tone: number; multiple: number }[];
   /** Chance that tones placed at random give as good a family, all fundamentals tried counted; 0 for a stated source. */
@@ -61,32 +63,22 @@ export function followFamily(
     name,
     fundamentalHz,
     fundamentalErrorHz: errorHz,
+    relativeWander: median(members.map(({ tone }) => relativeWanderOf(tones[tone]))),
     members,
     chanceProbability: isStated ? 0 : poissonTail(distinct, expected),
     isStated,
   };
 }
 
-/** Stated fundamentals (supply, shaft) first, then the best blind one among what they leave, until none stands. */
-export function findFamilies(
-  tones: ToneMeasurement[],
-  stated: { name: string; frequencyHz: number; errorHz: number }[],
-  binHz: number,
-): HarmonicFamily[] {
-  const families = stated.map(({ name, frequencyHz, errorHz }) =>
-    followFamily(tones, name, frequencyHz, errorHz, binHz, true),
-  );
-  for (let round = 0; round < 2; round++) {
-    const taken = new Set(families.flatMap((family) => family.members.map(({ tone }) => tone)));
-    const free = tones.map((_, index) => index).filter((index) => !taken.has(index));
-    const best = bestBlindFamily(tones, free, binHz);
-    if (best === null) break;
-    families.push(best);
-  }
-  return families;
+const relativeWanderOf = (tone: ToneMeasurement | undefined): number =>
+  tone === undefined || tone.frequencyHz === 0 ? 0 : tone.wanderHz / tone.frequencyHz;
+
+function median(values: number[]): number {
+  return [...values].sort((a, b) => a - b)[values.length >> 1] ?? 0;
 }
 
-function bestBlindFamily(tones: ToneMeasurement[], free: number[], binHz: number): HarmonicFamily | null {
+/** The best family among tones that nothing explains yet, all fundamentals tried counted; null where none stands. */
+export function bestBlindFamily(tones: ToneMeasurement[], free: number[], binHz: number): HarmonicFamily | null {
   const strongest = [...free].sort((a, b) => (tones[b]?.levelDb ?? 0) - (tones[a]?.levelDb ?? 0)).slice(0, 10);
   const chosen = free.map((index) => tones[index] as ToneMeasurement);
   let best: HarmonicFamily | null = null;

@@ -3,15 +3,19 @@ import type { Finding, Tone } from '../schemas/screening.js';
 import type { Thresholds } from '../schemas/thresholds.js';
 import type { FoldEvidence } from './FoldEvidence.js';
 import { aliasHz, candidatesHz, zoneOf } from './foldArithmetic.js';
-import { foldedComb } from './foldedComb.js';
+import { explainSideBands } from './explainSideBands.js';
+import { combsPerFamily, foldedComb, type FoldedMatch } from './foldedComb.js';
 import { foldedToneFinding } from './foldedToneFinding.js';
-import { findFamilies, type HarmonicFamily, matchSigmas, toneErrorHz } from './harmonicFamily.js';
+import { bestBlindFamily, followFamily, type HarmonicFamily, matchSigmas, toneErrorHz } from './harmonicFamily.js';
 import { judgeMovedTones } from './judgeMovedTones.js';
 import type { MeasurementRecord, ToneMeasurement } from './MeasurementRecord.js';
 
 /** Relative error of a frequency written into a sheet: speeds and supplies are known to about this. */
 const statedRelativeError = 2e-3;
 const candidatesListed = 4;
+const mostBlindFamilies = 4;
+/** A match more likely by chance than not is none. */
+const leastFoldedConfidence = 0.8;
 /** Below the total power by the protection and this much more, a folded tone is no reason to call a capture folded. */
 const immaterialBelowDb = 25;
 const largestLogRatio = 6;
@@ -38,28 +42,9 @@ export function judgeTones(record: MeasurementRecord, thresholds: Thresholds, sh
     confidence: 0,
   }));
   if (record.companion !== null) judgeMovedTones(tones, measured, record.companion, sampleRateHz, binHz, reachHz);
-  const families = findFamilies(measured, statedFundamentals(sheet, sampleRateHz), binHz);
-  explainInBand(tones, families);
+  explainFamilies(tones, measured, statedFundamentals(sheet, sampleRateHz), sampleRateHz, binHz);
   explainKnownSources(tones, measured, sheet, sampleRateHz, binHz);
-  const free = (): number[] =>
-    tones.map((_, index) => index).filter((index) => tones[index]?.explanation === 'unexplained');
-  const usable = families.filter((family) => family.members.length >= 2);
-  for (const family of usable) {
-    const combsTried = 2 * usable.length;
-    for (const match of foldedComb(measured, free(), family, sampleRateHz, binHz, combsTried)) {
-      const tone = tones[match.tone] as Tone;
-      if (tone.explanation !== 'unexplained') continue;
-      const confidence = 1 - match.chanceProbability;
-      if (confidence < 0.5) continue;
-      Object.assign(tone, {
-        explanation: 'foldedHarmonic',
-        trueFrequencyHz: match.trueFrequencyHz,
-        confidence,
-        chanceProbability: match.chanceProbability,
-        explainedBy: `${match.multiple} × ${family.fundamentalHz.toPrecision(6)} Hz`,
-      } satisfies Partial<Tone>);
-    }
-  }
+  explainSideBands(tones, measured, binHz);
   const folded = tones.filter(
     (tone) => tone.explanation.startsWith('folded') || tone.explanation === 'movedBetweenRates',
   );
@@ -98,19 +83,62 @@ function statedFundamentals(
   return stated;
 }
 
-function explainInBand(tones: Tone[], families: HarmonicFamily[]): void {
-  for (const family of families) {
-    for (const { tone: index, multiple } of family.members) {
-      const tone = tones[index] as Tone;
-      if (tone.explanation !== 'unexplained') continue;
-      Object.assign(tone, {
-        explanation: family.name === 'supply' ? 'supply' : 'harmonic',
-        confidence: 1 - family.chanceProbability,
-        chanceProbability: family.chanceProbability,
-        explainedBy: `${multiple} × ${family.fundamentalHz.toPrecision(6)} Hz`,
-      } satisfies Partial<Tone>);
+/**
+ * Stated families (supply, shaft) first, then blind ones; after each its folded members, so that the comb they make is not
+ * taken for a family of its own.
+ */
+function explainFamilies(
+  tones: Tone[],
+  measured: ToneMeasurement[],
+  stated: { name: string; frequencyHz: number; errorHz: number }[],
+  sampleRateHz: number,
+  binHz: number,
+): void {
+  const free = (): number[] =>
+    tones.map((_, index) => index).filter((index) => tones[index]?.explanation === 'unexplained');
+  let families = 0;
+  const explain = (family: HarmonicFamily): void => {
+    explainInBand(tones, family);
+    if (family.members.length < 2) return;
+    families++;
+    const combsTried = families * combsPerFamily;
+    for (const match of foldedComb(measured, free(), family, sampleRateHz, binHz, combsTried)) {
+      explainFolded(tones[match.tone] as Tone, match, family);
     }
+  };
+  for (const { name, frequencyHz, errorHz } of stated) {
+    explain(followFamily(measured, name, frequencyHz, errorHz, binHz, true));
   }
+  for (let round = 0; round < mostBlindFamilies; round++) {
+    const family = bestBlindFamily(measured, free(), binHz);
+    if (family === null) break;
+    explain(family);
+  }
+}
+
+function explainInBand(tones: Tone[], family: HarmonicFamily): void {
+  for (const { tone: index, multiple } of family.members) {
+    const tone = tones[index] as Tone;
+    if (tone.explanation !== 'unexplained') continue;
+    Object.assign(tone, {
+      explanation: family.name === 'supply' ? 'supply' : 'harmonic',
+      confidence: 1 - family.chanceProbability,
+      chanceProbability: family.chanceProbability,
+      explainedBy: `${multiple} × ${family.fundamentalHz.toPrecision(6)} Hz`,
+    } satisfies Partial<Tone>);
+  }
+}
+
+function explainFolded(tone: Tone, match: FoldedMatch, family: HarmonicFamily): void {
+  const confidence = 1 - match.chanceProbability;
+  if (tone.explanation !== 'unexplained' || confidence < leastFoldedConfidence) return;
+  Object.assign(tone, {
+    explanation: 'foldedHarmonic',
+    trueFrequencyHz: match.trueFrequencyHz,
+    confidence,
+    chanceProbability: match.chanceProbability,
+    explainedBy: `${match.multiple} × ${family.fundamentalHz.toPrecision(6)} Hz`,
+  } satisfies Partial<Tone>);
 }
 
 /** Sources at stated frequencies: in band they explain a tone; beyond fs/2 a tone at their alias is folded, against chance. */
