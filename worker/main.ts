@@ -6,6 +6,7 @@ import { createLogger } from '../server/logging/createLogger.js';
 import { finishDueBatches } from '../server/queues/finishBatch.js';
 import { reconcileCaptures } from '../server/queues/reconcileCaptures.js';
 import { relayCaptures } from '../server/queues/relayCaptures.js';
+import { screenDuePairs } from '../server/queues/screenPairsElsewhere.js';
 import { ScreeningQueue } from '../server/queues/ScreeningQueue.js';
 import { createStorage } from '../server/storage/createStorage.js';
 import { sweepStore } from '../server/storage/sweepStore.js';
@@ -47,6 +48,7 @@ async function main(): Promise<void> {
       await finishDueBatches(dataSource, config);
     }),
     startLoop('sweep', sweepIntervalMs, logger, () => sweepStore(dataSource, storage)),
+    startLoop('pairs', sweepIntervalMs, logger, () => screenDuePairs(dataSource)),
     startLoop('mail', config.MAIL_INTERVAL_MS, logger, () =>
       sendDueMail({ dataSource, transport, from: config.MAIL_FROM, logger }),
     ),

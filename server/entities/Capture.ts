@@ -15,6 +15,8 @@ import { User } from './User.js';
 @Index(['projectId', 'state'])
 @Index(['projectId', 'sha256'])
 @Index(['state', 'queuedAt'])
+@Index(['companionId'])
+@Index(['projectId'], { where: '"companion_note" IS NOT NULL' })
 // Over expressions, which a decorator can't say: made in the migration IndexReviewOrders.
 @Index('IDX_captures_review_fold_score', { synchronize: false })
 @Index('IDX_captures_review_created_at', { synchronize: false })
@@ -128,6 +130,22 @@ export class Capture extends BaseRow {
   /** Same bytes, uploaded to this project before. */
   @Column({ type: 'uuid', nullable: true })
   duplicateOfId!: string | null;
+
+  /** The capture of the same event at another rate that the last screening was given, or would have been (see the note). */
+  @Column({ type: 'uuid', nullable: true })
+  companionId!: string | null;
+
+  @ManyToOne(() => Capture, { onDelete: 'SET NULL', nullable: true })
+  @JoinColumn({ name: 'companion_id' })
+  companion!: Relation<Capture> | null;
+
+  /** Names what of the companion the results rest on (`companionBasis`); null where it was not opened. */
+  @Column({ type: 'char', length: 64, nullable: true })
+  companionBasis!: string | null;
+
+  /** Why the sheet's companion was not compared; null where it was, or where none is asked for. */
+  @Column({ type: 'text', nullable: true })
+  companionNote!: string | null;
 
   /** Raised by each decision; the reviewer states the one they saw. */
   @Column({ type: 'integer', default: 0 })

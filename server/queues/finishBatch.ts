@@ -1,9 +1,10 @@
-import type { DataSource, EntityManager } from 'typeorm';
+import { In, Not, type DataSource, type EntityManager } from 'typeorm';
 import type { Config } from '../config/config.js';
-import { AuditEntry, Batch } from '../entities/index.js';
+import { AuditEntry, Batch, Capture } from '../entities/index.js';
 import { batchScreenedMail, type FlaggedCapture } from '../mailbox/batchScreenedMail.js';
 import { queueMail } from '../mailbox/queueMail.js';
 import { countVerdicts } from '../repositories/countVerdicts.js';
+import { screenPairsAgain } from './screenPairsAgain.js';
 
 const listedFlagged = 30;
 
@@ -63,14 +64,20 @@ async function queueSummaries(manager: EntityManager, config: Config, batch: Bat
 }
 
 /**
- * Moves a closed batch in which nothing is pending from `screening` to `review`, and writes the summary mails in the same
- * transaction. One statement decides, so that of several callers exactly one finishes it.
+ * To be called when a capture's screening has ended. With nothing pending in the batch, captures whose companion is another
+ * one by now are screened again; with none of those either, a closed batch moves from `screening` to `review`, and the summary
+ * mails are written in the same transaction. One statement decides, so that of several callers exactly one finishes it.
  * @returns whether this call finished the batch
  */
 export function finishBatch(dataSource: DataSource, config: Config, batchId: string): Promise<boolean> {
   return dataSource.transaction(async (manager) => {
     // The lock first, in a statement of its own: the second one then counts what is committed by whoever held it before.
-    await manager.query(`SELECT id FROM batches WHERE id = $1 AND state = 'screening' FOR UPDATE`, [batchId]);
+    const open = await manager.findOne(Batch, {
+      where: { id: batchId, state: In(['receiving', 'screening', 'review']) },
+      lock: { mode: 'pessimistic_write' },
+    });
+    const isPending = await manager.existsBy(Capture, { batchId, state: Not(In(['screened', 'failed'])) });
+    if (!open || isPending || (await screenPairsAgain(manager, open)) > 0) return false;
     const [, affected] = (await manager.query(
       `UPDATE batches SET state = 'review', screened_at = coalesce(screened_at, now())
         WHERE id = $1 AND state = 'screening' AND completed_at IS NOT NULL

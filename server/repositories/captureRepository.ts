@@ -161,6 +161,10 @@ export interface CaptureDetailRow extends CaptureListRow {
   /** Of the version it was judged with; null before. */
   guardStart: number | null;
   independentReview: boolean;
+  companionId: string | null;
+  companionFileName: string | null;
+  companionRateHz: number | null;
+  companionNote: string | null;
 }
 
 export async function findCaptureDetail(
@@ -171,8 +175,11 @@ export async function findCaptureDetail(
     `SELECT ${listColumns}, b.state AS "batchState", b.acquisition AS "batchAcquisition", c.acquisition,
             c.csv_layout AS "csvLayout", c.engine_version AS "engineVersion",
             c.thresholds_version AS "thresholdsVersion", (used.values->>'guardStart')::float8 AS "guardStart",
-            coalesce((current.values->>'independentReview')::boolean, false) AS "independentReview"
+            coalesce((current.values->>'independentReview')::boolean, false) AS "independentReview",
+            k.id AS "companionId", k.file_name AS "companionFileName", k.sample_rate_hz AS "companionRateHz",
+            c.companion_note AS "companionNote"
        FROM (SELECT *, '' AS key FROM captures WHERE id = $1) c ${listJoins}
+       LEFT JOIN captures k ON k.id = c.companion_id AND k.project_id = c.project_id
        LEFT JOIN thresholds_versions used ON used.project_id = c.project_id AND used.version = c.thresholds_version
        LEFT JOIN LATERAL (SELECT values FROM thresholds_versions t WHERE t.project_id = c.project_id
                            ORDER BY version DESC LIMIT 1) current ON true`,

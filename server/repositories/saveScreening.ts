@@ -27,6 +27,13 @@ export interface ScreeningResult {
   channels: ScreenedChannel[];
 }
 
+/** What the screening was given to compare with. */
+export interface UsedCompanion {
+  id: string;
+  /** `companionBasis`; null where it was not opened. */
+  basis: string | null;
+}
+
 interface SaveScreening {
   captureId: string;
   /** The attempt that made this result: a newer one on the row makes the write void. */
@@ -34,12 +41,15 @@ interface SaveScreening {
   engineVersion: string;
   thresholdsVersion: number | null;
   result: ScreeningResult;
+  companion?: UsedCompanion | null;
+  /** Why a companion that was asked for was not compared. */
+  companionNote?: string | null;
 }
 
 const toBytes = (values: Float32Array): Buffer => Buffer.from(values.buffer, values.byteOffset, values.byteLength);
 
 /** Columns of the capture's row that follow from its channels. */
-function summarise({ result, engineVersion, thresholdsVersion }: SaveScreening) {
+function summarise({ result, engineVersion, thresholdsVersion, companion, companionNote }: SaveScreening) {
   const first = result.channels[0]?.screen;
   return {
     state: 'screened' as const,
@@ -58,6 +68,9 @@ function summarise({ result, engineVersion, thresholdsVersion }: SaveScreening) 
     channelCount: result.channels.length,
     engineVersion,
     thresholdsVersion,
+    companionId: companion?.id ?? null,
+    companionBasis: companion?.basis ?? null,
+    companionNote: companionNote ?? null,
   };
 }
 

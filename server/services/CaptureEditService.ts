@@ -11,6 +11,8 @@ import type { Actor } from '../policies/Actor.js';
 import { refuseEdit } from '../policies/capturePolicy.js';
 import { requireProjectReader } from '../policies/requireProjectAccess.js';
 import { relayNow } from '../queues/relayNow.js';
+import { screenPairsAgain } from '../queues/screenPairsAgain.js';
+import { screenPairsElsewhere } from '../queues/screenPairsElsewhere.js';
 import { lockBatch, reopenBatch } from '../repositories/batchRepository.js';
 import { saveJudgement } from '../repositories/saveJudgement.js';
 import { sendToScreening } from '../repositories/sendToScreening.js';
@@ -70,7 +72,9 @@ export class CaptureEditService {
           : 'changed the acquisition sheet; the file is screened again',
         details: { before: capture.acquisition, after: put.acquisition },
       });
+      await screenPairsAgain(manager, batch);
     });
+    await screenPairsElsewhere(this.deps.dataSource, [captureId]);
     await relayNow(this.deps);
   }
 

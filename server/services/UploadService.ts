@@ -6,6 +6,8 @@ import type { Actor } from '../policies/Actor.js';
 import { refuseEdit } from '../policies/capturePolicy.js';
 import { requireProjectReader } from '../policies/requireProjectAccess.js';
 import { relayNow } from '../queues/relayNow.js';
+import { screenPairsAgain } from '../queues/screenPairsAgain.js';
+import { screenPairsElsewhere } from '../queues/screenPairsElsewhere.js';
 import { lockBatch } from '../repositories/batchRepository.js';
 import { newStorageKey } from '../storage/newStorageKey.js';
 import { checkReceivedFile, type RefusedFile, type UploadCandidate } from './checkReceivedFile.js';
@@ -55,6 +57,10 @@ export class UploadService {
     }
     if (candidates.length === 0) return { captures: [], refused };
     const placed = await this.store(candidates, (stored) => this.place(actor, batchId, stored, said.replaces));
+    await screenPairsElsewhere(
+      this.deps.dataSource,
+      placed.captures.map(({ id }) => id),
+    );
     await relayNow(this.deps);
     return { captures: placed.captures, refused: [...refused, ...placed.refused] };
   }
@@ -66,9 +72,13 @@ export class UploadService {
       const refusal = refuseEdit(actor, { projectId: batch.projectId, batchState: batch.state });
       if (refusal) throw refusal;
       const [only] = stored;
-      if (replaces !== null && only) return replaceCapture(manager, actor, batch, replaces, only);
-      if (batch.completedAt !== null) throw completeError();
-      return addCaptures(manager, actor, batch, stored, config.MAX_FILES_PER_BATCH);
+      if (replaces === null && batch.completedAt !== null) throw completeError();
+      const placed =
+        replaces !== null && only
+          ? await replaceCapture(manager, actor, batch, replaces, only)
+          : await addCaptures(manager, actor, batch, stored, config.MAX_FILES_PER_BATCH);
+      await screenPairsAgain(manager, batch);
+      return placed;
     });
   }
 

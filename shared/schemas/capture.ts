@@ -57,6 +57,16 @@ export const historyEntrySchema = z.strictObject({
 });
 export type HistoryEntry = z.infer<typeof historyEntrySchema>;
 
+/** The capture of the same event at another rate that a capture was to be compared with; always of the same project. */
+export const companionSchema = z.strictObject({
+  id: idSchema,
+  fileName: z.string(),
+  sampleRateHz: z.number().nullable(),
+  /** False: the results were made without it; the note says why. */
+  isCompared: z.boolean(),
+});
+export type CompanionDto = z.infer<typeof companionSchema>;
+
 /** GET /captures/:captureId */
 export const captureSchema = z.strictObject({
   ...captureRowSchema.shape,
@@ -67,6 +77,10 @@ export const captureSchema = z.strictObject({
   /** Only the values set for this file. */
   acquisitionOverride: acquisitionSheetSchema,
   csvLayout: csvLayoutSchema.nullable(),
+  /** Null unless the capture is screened. */
+  companion: companionSchema.nullable(),
+  /** Why no companion was compared although the sheet asks for one, and what to do. */
+  companionNote: z.string().nullable(),
   thresholdsVersion: z.int().nullable(),
   guardStart: z.number().nullable(),
   engineVersion: z.string().nullable(),

@@ -1,5 +1,6 @@
 import { CaptureError } from '../../shared/formats/CaptureError.js';
 import type { AcquisitionSheet } from '../../shared/schemas/acquisitionSheet.js';
+import type { CsvLayout } from '../../shared/schemas/csvLayout.js';
 import type { ChannelMeasurement } from '../measure/ChannelMeasurement.js';
 import { measureCapture, type MeasureOptions } from '../measure/measureCapture.js';
 import { openCapture } from '../readers/openCapture.js';
@@ -12,6 +13,8 @@ export interface CompanionFile {
   path: string;
   name: string;
   sheet: AcquisitionSheet;
+  /** As corrected by a person; recognised otherwise. */
+  csvLayout?: CsvLayout | null;
 }
 
 /** Compares each channel with the companion's and puts what was found into its record; one that can't be used is noted, not fatal. */
@@ -31,7 +34,11 @@ export function addCompanion(
   if (rateHz === null || source.timeStamps?.irregular === true) return;
   let other: SampleSource | null = null;
   try {
-    other = openCapture(companion.path, { acquisition: companion.sheet, csvLayout: null, fileName: companion.name });
+    other = openCapture(companion.path, {
+      acquisition: companion.sheet,
+      csvLayout: companion.csvLayout ?? null,
+      fileName: companion.name,
+    });
     const otherRateHz = other.sampleRateHz;
     if (otherRateHz === null) return note('its sampling rate is unknown. State it in its acquisition sheet.');
     if (other.timeStamps?.irregular === true) return note('its time stamps are irregular.');

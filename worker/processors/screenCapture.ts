@@ -5,10 +5,13 @@ import type { ScreenCapturePayload } from '../../shared/jobs/screenCapture.js';
 import { defaultThresholds } from '../../shared/schemas/thresholds.js';
 import { Batch, Capture, ThresholdsVersion } from '../../server/entities/index.js';
 import { finishBatch } from '../../server/queues/finishBatch.js';
+import { screenPairsElsewhere } from '../../server/queues/screenPairsElsewhere.js';
 import { failCapture } from '../../server/repositories/failCapture.js';
 import { saveScreening } from '../../server/repositories/saveScreening.js';
-import { fileLabel } from './fileLabel.js';
 import type { WorkerContext } from '../WorkerContext.js';
+import { fileLabel } from './fileLabel.js';
+import { findJobCompanion } from './findJobCompanion.js';
+import { runWithCompanion } from './runWithCompanion.js';
 
 const progressPauseMs = 700;
 
@@ -42,16 +45,23 @@ function progressWriter(dataSource: DataSource, { captureId, attempt }: ScreenCa
   };
 }
 
+/** What a capture's end may mean for others: their companion, or the last one of their batch. */
+async function settleOthers({ dataSource, config }: WorkerContext, capture: Capture): Promise<void> {
+  await screenPairsElsewhere(dataSource, [capture.id]);
+  await finishBatch(dataSource, config, capture.batchId);
+}
+
 /**
- * Screens one capture: file -> measurement -> judgement -> rows, in one transaction. Running it twice gives the same
- * rows; a job overtaken by a newer attempt writes nothing.
+ * Screens one capture: file, and its companion's if there is one -> measurement -> judgement -> rows, in one transaction.
+ * Running it twice gives the same rows; a job overtaken by a newer attempt writes nothing.
  * @throws UnrecoverableError for a bad file (stored on the capture, never retried); any other error is a passing fault.
  */
 export async function screenCapture(
   payload: ScreenCapturePayload,
-  { dataSource, storage, screeningPool, config, logger }: WorkerContext,
+  context: WorkerContext,
   signal: AbortSignal,
 ): Promise<void> {
+  const { dataSource, screeningPool, config, logger } = context;
   const capture = await claim(dataSource, payload);
   if (!capture) {
     logger.info({ ...payload }, 'job overtaken, nothing to do');
@@ -62,7 +72,8 @@ export async function screenCapture(
     .getRepository(ThresholdsVersion)
     .findOne({ where: { projectId: capture.projectId }, order: { version: 'DESC' } });
 
-  const result = await storage.withLocalFile(capture.storageKey, (filePath) =>
+  const chosen = await findJobCompanion(dataSource, batch, capture);
+  const result = await runWithCompanion(context, capture, chosen.file, signal, (filePath, companion) =>
     screeningPool.run(
       {
         filePath,
@@ -71,6 +82,7 @@ export async function screenCapture(
         sizeBytes: capture.sizeBytes,
         acquisition: { ...batch.acquisition, ...capture.acquisition },
         csvLayout: capture.csvLayout,
+        companion,
         thresholds: thresholdsVersion?.values ?? defaultThresholds,
       },
       {
@@ -82,7 +94,7 @@ export async function screenCapture(
 
   if (!result.ok) {
     await failCapture(dataSource, payload, result.failure);
-    await finishBatch(dataSource, config, capture.batchId);
+    await settleOthers(context, capture);
     throw new UnrecoverableError(`${result.failure.code}: ${result.failure.message}`);
   }
   const isSaved = await dataSource.transaction((manager) =>
@@ -92,11 +104,13 @@ export async function screenCapture(
       thresholdsVersion: thresholdsVersion?.version ?? null,
       engineVersion,
       result: result.result,
+      companion: chosen.used,
+      companionNote: chosen.note ?? result.companionNote,
     }),
   );
   if (!isSaved) {
     logger.warn({ ...payload }, 'result of an overtaken attempt dropped');
     return;
   }
-  await finishBatch(dataSource, config, capture.batchId);
+  await settleOthers(context, capture);
 }

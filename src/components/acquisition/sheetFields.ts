@@ -22,6 +22,7 @@ export interface SheetDraft {
   logger: string;
   position: string;
   companion: string;
+  pair: string;
   notes: string;
 }
 
@@ -35,7 +36,7 @@ const numberFields = [
   'supplyHz',
   'scale',
 ] as const;
-const textFields = ['unit', 'logger', 'position', 'companion', 'notes'] as const;
+const textFields = ['unit', 'logger', 'position', 'companion', 'pair', 'notes'] as const;
 
 const text = (value: number | string | undefined): string => (value === undefined ? '' : String(value));
 
@@ -85,7 +86,6 @@ export function parseDraft(draft: SheetDraft, kept: AcquisitionSheet = {}): Pars
       }
     : {};
   const hidden = {
-    ...(kept.pair ? { pair: kept.pair } : {}),
     ...(kept.noiseFloorDb === undefined ? {} : { noiseFloorDb: kept.noiseFloorDb }),
   };
   const parsed = acquisitionSheetSchema.safeParse({
