@@ -208,6 +208,32 @@ export interface CompanionMeasurement {
   alignment?: CompanionAlignment | null;
   /** Where each tone of this capture would stand in the companion, and what stands there. Missing in older records. */
   moves?: ToneMove[];
+  /** Folded energy by coherence with what the companion carries beyond this capture's fs/2; null where not aligned. */
+  folded?: FoldedBand[] | null;
+}
+
+/** A tenth of 0 … fs/2 and what each zone of the companion accounts for in it. */
+export interface FoldedBand {
+  fromHz: number;
+  toHz: number;
+  /** Share of this band in the capture's power, dB. */
+  powerDb: number;
+  /** Zone 1 (what is not folded) first. */
+  zones: FoldedZone[];
+}
+
+export interface FoldedZone {
+  zone: number;
+  /** Share of what the lower zones leave, cells weighted to equal level, that this zone accounts for: partial coherence. */
+  coherence: number;
+  /** Independent cells of time and frequency behind it. */
+  independent: number;
+  /** Transfers fitted; 0 where the zone can't be told from lower ones. */
+  inputs: number;
+  /** Power of what comes from this zone over the capture's power, dB, without what chance explains. */
+  powerDb: number;
+  /** The same of what chance alone would give on average: the measure of what can be noticed. */
+  chanceDb: number;
 }
 
 /** The companion's clock against this capture's: what happens here at t happens there at t + lag. */

@@ -5,6 +5,7 @@ import { decideVerdict } from './decideVerdict.js';
 import { type FoldEvidence, isFoldedTone, joinEvidence } from './FoldEvidence.js';
 import { foldFeatures } from './foldFeatures.js';
 import { foldPrior, foldScore } from './foldScore.js';
+import { judgeCompanion } from './judgeCompanion.js';
 import { bandEdgeFigures, judgeEdge } from './judgeEdge.js';
 import { judgeIntegrity } from './judgeIntegrity.js';
 import { judgeIrregular } from './judgeIrregular.js';
@@ -71,7 +72,7 @@ export function judgeChannel(
 function gatherEvidence(record: MeasurementRecord, thresholds: Thresholds, sheet: AcquisitionSheet): FoldEvidence {
   if (record.irregular !== null) return judgeIrregular(record.irregular, thresholds);
   const binHz = record.durationS === null || record.durationS === 0 ? 0 : 1 / record.durationS;
-  return joinEvidence([judgeTones(record, thresholds, sheet)], binHz);
+  return joinEvidence([judgeTones(record, thresholds, sheet), judgeCompanion(record, thresholds)], binHz);
 }
 
 /** From the sheet; without one from 0 Hz to fs over the practice factor. */

@@ -53,7 +53,11 @@ export function judgeMove(
     if (!fits(place)) continue;
     if (place.hereDb !== null && place.ratioDb - gainDb < place.hereDb + leastExcessDb) continue;
     const chanceProbability = Math.min(1, tried * (1 - Math.exp(-2 * toleranceHz * peaksPerHz)));
-    return { outcome: 'moved', place, candidatesHz: [place.trueHz], chanceProbability };
+    // Rates in a simple ratio show several true frequencies alike.
+    const candidatesHz = others
+      .filter((other) => Math.abs(other.expectedHz - place.expectedHz) < toleranceHz && fits(other))
+      .map(({ trueHz }) => trueHz);
+    return { outcome: 'moved', place, candidatesHz, chanceProbability };
   }
   const isVisible = gainDb > same.besideDb + 2 * leastStandOutDb && same.ratioDb < gainDb - stepDb;
   return { outcome: isVisible ? 'absent' : 'hidden', place: null, candidatesHz: [], chanceProbability: 1 };

@@ -37,15 +37,17 @@ export function judgeMovedTones(
   judged.forEach((one, index) => {
     const tone = tones[index];
     if (one === null || tone === undefined || one.place === null) return;
+    tone.candidatesHz = one.candidatesHz;
     if (one.outcome === 'moved') {
       const chance = Math.max(one.chanceProbability, together);
+      const alike = one.candidatesHz.filter((hz) => hz !== one.place?.trueHz).slice(0, 3);
       Object.assign(tone, {
         explanation: 'movedBetweenRates',
         trueFrequencyHz: one.place.trueHz,
         confidence: 1 - chance,
         chanceProbability: chance,
-        explainedBy: `${companion.name} at ${companion.sampleRateHz} Hz shows it at ${formatHz(one.place.expectedHz)}`,
+        explainedBy: `${companion.name} at ${companion.sampleRateHz} Hz shows it at ${formatHz(one.place.expectedHz)}${alike.length > 0 ? `; ${alike.map(formatHz).join(', ')} would look the same` : ''}`,
       } satisfies Partial<Tone>);
-    } else tone.candidatesHz = one.candidatesHz;
+    }
   });
 }

@@ -1,8 +1,10 @@
 import type { AcquisitionSheet } from '../../shared/schemas/acquisitionSheet.js';
-import type { CompanionMeasurement, MeasurementRecord } from '../../shared/screening/MeasurementRecord.js';
+import type { CompanionMeasurement, FoldedBand, MeasurementRecord } from '../../shared/screening/MeasurementRecord.js';
 import { alignCaptures } from './alignCaptures.js';
-import { measureMoves } from './measureMoves.js';
+import { foldedCoherence } from './foldedCoherence.js';
+import { measureMoves, type Recorded } from './measureMoves.js';
 import type { Excerpt } from './readExcerpt.js';
+import { zoneCells } from './ZoneCells.js';
 
 /** Highest frequency looked for where the sheet states no sensor band, as a multiple of the higher rate. */
 const defaultReach = 2;
@@ -26,7 +28,19 @@ export function measureCompanion(
     tones: other.record.tones,
     alignment,
     moves: measureMoves(own, other, lagS, own.record.tones, reachHz),
+    folded: lagS === null ? null : measureFolded(own, other, lagS, reachHz),
   };
+}
+
+/** A companion at about twice the rate or more is taken to show each frequency at its own place. */
+const fastRatio = 1.9;
+const mostZones = 4;
+
+function measureFolded(own: Recorded, other: Recorded, lagS: number, reachHz: number): FoldedBand[] | null {
+  const isFast = other.rateHz >= fastRatio * own.rateHz;
+  const upToHz = isFast ? other.rateHz / 2 : Math.min(reachHz, (mostZones * own.rateHz) / 2);
+  const cells = zoneCells(own, other, lagS, 1, upToHz);
+  return cells === null ? null : foldedCoherence(cells);
 }
 
 /** The companion's channel that goes with a channel: the one of the same name, else of the same number, else the first. */

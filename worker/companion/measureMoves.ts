@@ -10,7 +10,7 @@ export interface Recorded {
 }
 
 const mostTones = 40;
-const mostPlaces = 12;
+const mostPlaces = 24;
 /** Two captures' clocks agree to this share of the frequency. */
 const clockShare = 5e-5;
 /** Frames over the overlap, from the finest in time to the finest in frequency. */
