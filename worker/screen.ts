@@ -1,8 +1,9 @@
 import { mkdirSync, writeFileSync } from 'node:fs';
-import { basename, dirname, join, resolve } from 'node:path';
+import { basename, join } from 'node:path';
 import { CaptureError } from '../shared/formats/CaptureError.js';
-import type { AcquisitionSheet } from '../shared/schemas/acquisitionSheet.js';
 import type { ScreenError } from '../shared/schemas/screening.js';
+import { createRateReader } from './companion/createRateReader.js';
+import { findCompanion, type RunOfFiles } from './companion/findCompanion.js';
 import { type ScreenArguments, screenArguments, screenUsage, UsageError } from './screenArguments.js';
 import { type ScreenedFile, screenFile } from './screenFile.js';
 import { readScreenInputs, type ScreenInputs } from './screenInputs.js';
@@ -28,11 +29,20 @@ function run(argv: string[]): number {
     );
     return 2;
   }
+  const { sheetOf, companionSheetOf } = inputs;
+  const runOfFiles: RunOfFiles = {
+    files: options.files,
+    manifestPath: options.manifest,
+    companionPath: options.companion,
+    sheetOf,
+    companionSheetOf,
+    rateHzOf: createRateReader(sheetOf),
+  };
   let failures = 0;
   options.files.forEach((file, index) => {
     process.stderr.write(`[${index + 1}/${options.files.length}] ${file}\n`);
     try {
-      const screened = screenOne(file, options, inputs);
+      const screened = screenOne(file, inputs, runOfFiles);
       for (const screen of screened.screens) print({ ...screen, file }, options.pretty);
       if (options.out !== null) writeOut(options.out, file, screened);
     } catch (error) {
@@ -43,23 +53,15 @@ function run(argv: string[]): number {
   return failures > 0 ? 1 : 0;
 }
 
-function screenOne(file: string, options: ScreenArguments, inputs: ScreenInputs): ScreenedFile {
-  const sheet = inputs.sheetOf(file);
-  const companionPath = options.companion ?? companionBeside(file, sheet);
+function screenOne(file: string, inputs: ScreenInputs, run: RunOfFiles): ScreenedFile {
+  const companion = findCompanion(file, run);
+  if (companion !== null) process.stderr.write(`  companion: ${companion.path}\n`);
   return screenFile(file, {
-    sheet,
+    sheet: inputs.sheetOf(file),
     thresholds: inputs.thresholds,
     fileName: basename(file),
-    companion:
-      companionPath === null || resolve(companionPath) === resolve(file)
-        ? null
-        : { path: companionPath, name: basename(companionPath), sheet: inputs.companionSheetOf(companionPath) },
+    companion,
   });
-}
-
-/** A companion named in the sheet or the manifest is looked for beside the file. */
-function companionBeside(file: string, sheet: AcquisitionSheet): string | null {
-  return sheet.companion === undefined || sheet.companion === '' ? null : resolve(dirname(file), sheet.companion);
 }
 
 function print(line: object, pretty: boolean): void {

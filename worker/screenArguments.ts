@@ -17,9 +17,11 @@ Screens WAV and CSV captures for aliasing. One JSON object a line per channel on
 
   --acquisition FILE.json  acquisition sheet for all files
   --manifest FILE.csv      a row a file: file, sampleRateHz, highestFrequencyHz, filterType, filterOrder,
-                           filterCornerHz, sources, nominalSpeedHz, companion, unit, scale
+                           filterCornerHz, sources, nominalSpeedHz, companion, unit, scale,
+                           logger, position, pair (files of one pair are companions of each other)
   --thresholds FILE.json   thresholds that differ from the defaults
-  --companion FILE         the same event at another rate
+  --companion FILE         the same event at another rate, for all files; without it: the manifest's companion,
+                           the other file of its pair, or the only one from its logger and position at another rate
   --out DIR                writes the measurement record (JSON) and a picture (SVG) per channel
   --pretty                 indents the JSON
 

@@ -62,8 +62,11 @@ export function alignCaptures(
   const bend = below - 2 * middle + above;
   const coarse = peak + (bend === 0 ? 0 : Math.max(-0.5, Math.min(0.5, (0.5 * (below - above)) / bend)));
   const { lag, errorValues } = refineLag(cross, size, last, coarse, isInverted);
-  const significance = (Math.abs(middle) * size) / 2 / Math.sqrt(squares / 2);
-  const trials = Math.max(1, a.length + b.length);
+  // Padding makes neighbouring bins alike: fewer of them speak for themselves.
+  const perIndependent = size / Math.max(a.length, b.length);
+  const significance = (Math.abs(middle) * size) / 2 / Math.sqrt((squares / 2) * perIndependent);
+  // Each lag may show a peak of either sign.
+  const trials = 2 * (a.length + b.length);
   return {
     lagS: lag / rateHz,
     lagErrorS: errorValues / rateHz,

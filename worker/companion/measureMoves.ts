@@ -17,6 +17,8 @@ const clockShare = 5e-5;
 const frameCounts = [24, 16, 12, 8, 5, 3] as const;
 /** Tones this much weaker than the one looked at don't disturb its frames. */
 const disturbingDb = -25;
+/** Places at which less than this of the highest stands are taken to be empty. */
+const leastLooked = 0.03;
 /** Offsets of the places beside, in widths of a frame's response. */
 const besideWidths = [-2.75, -1.75, 1.75, 2.75] as const;
 
@@ -72,10 +74,9 @@ export function measureMoves(
     const soundsS = hopS * filledFrames(here);
     const spanTurns = (reach: number): number[] =>
       isAligned ? [-1, -0.5, 0, 0.5, 1].map((step) => 2 * Math.PI * step * reach * hopS) : [0];
-    const places = candidatesHz(tone.frequencyHz, own.rateHz, reachHz)
+    const looks = candidatesHz(tone.frequencyHz, own.rateHz, reachHz)
       .slice(0, mostPlaces)
-      .map((trueHz): TonePlace => {
-        const expectedHz = aliasHz(trueHz, other.rateHz);
+      .map((trueHz) => {
         const template = ours.at(trueHz);
         const turns = spanTurns(Math.max(0.25 / soundsS, clockShare * trueHz));
         const amplitude = (frames: Float64Array): number =>
@@ -83,21 +84,27 @@ export function measureMoves(
             ? Math.max(...turns.map((turn) => crossAmplitude(template, frames, turn))) / power
             : Math.sqrt(framePower(frames) / power);
         const there = theirs.at(trueHz);
-        const beside = besideWidths
-          .map((width) => amplitude(theirs.at(trueHz + width * (2 / lengthS))))
-          .sort((a, b) => a - b);
-        const sign = signOf(trueHz, other.rateHz);
-        const isElsewhere = Math.abs(expectedHz - tone.frequencyHz) > 2 / lengthS;
-        const ratio = amplitude(there);
-        return {
-          trueHz,
-          expectedHz,
-          ratioDb: toDb(ratio),
-          besideDb: toDb(((beside[1] ?? 0) + (beside[2] ?? 0)) / 2),
-          hereDb: isElsewhere && expectedHz < own.rateHz / 2 ? toDb(amplitude(ours.at(sign * expectedHz))) : null,
-          coherence: isAligned ? Math.min(1, (ratio * ratio * power) / Math.max(framePower(there), 1e-300)) : null,
-        };
+        return { trueHz, amplitude, ratio: amplitude(there), therePower: framePower(there) };
       });
+    const highest = Math.max(...looks.map(({ ratio }) => ratio));
+    const places = looks.map(({ trueHz, amplitude, ratio, therePower }, index): TonePlace => {
+      const expectedHz = aliasHz(trueHz, other.rateHz);
+      // Where next to nothing stands, what stands beside it is of no interest.
+      const isLooked = index === 0 || ratio > highest * leastLooked;
+      const beside = (isLooked ? besideWidths : [])
+        .map((width) => amplitude(theirs.at(trueHz + width * (2 / lengthS))))
+        .sort((a, b) => a - b);
+      const sign = signOf(trueHz, other.rateHz);
+      const isElsewhere = Math.abs(expectedHz - tone.frequencyHz) > 2 / lengthS && expectedHz < own.rateHz / 2;
+      return {
+        trueHz,
+        expectedHz,
+        ratioDb: toDb(ratio),
+        besideDb: toDb(isLooked ? ((beside[1] ?? 0) + (beside[2] ?? 0)) / 2 : ratio),
+        hereDb: isLooked && isElsewhere ? toDb(amplitude(ours.at(sign * expectedHz))) : null,
+        coherence: isAligned ? Math.min(1, (ratio * ratio * power) / Math.max(therePower, 1e-300)) : null,
+      };
+    });
     return { frequencyHz: tone.frequencyHz, soundsS, isAligned, places };
   });
 }
