@@ -9,9 +9,8 @@ export interface FoldedMatch {
 }
 
 const highestFold = 3;
-const leastMatches = 2;
-/** Combs tried for a family: each fold, both sides. */
-export const combsPerFamily = 2 * highestFold;
+/** Combs tried, weighted so that near folds cost less (weighted Bonferroni, Genovese, Roeder & Wasserman 2006): Σ 1/weight < 1. */
+const combWeight = (fold: number): number => 2 ** (fold + 1);
 /** Subharmonics (half orders of an engine, two machines on one belt) stand at these parts of the spacing in their own right. */
 const ownParts = [0, 1 / 4, 1 / 3, 1 / 2, 2 / 3, 3 / 4, 1];
 
@@ -26,7 +25,7 @@ interface Match {
 /**
  * Folded members of a family. At steady speed all members that fold about m·fs lie on one comb of spacing f0 with offset
  * ±(m·fs mod f0): they are one prediction, of chance 2t/f0 for each comb tried, because a carrier with side-bands imitates a
- * comb exactly; t is how far the farthest of the tones really lies off, and what it is uncertain by. As many tones as were
+ * comb exactly; t is how far the comb really lies off its predicted place, and what that is uncertain by. As many tones as were
  * found have to be unlikely by chance too: the weaker of both statements counts. A comb that falls on the family itself or on
  * its subharmonics shows nothing and is left out, and so is a tone in the skirt of a stronger member that wanders.
  * @param free tones that nothing in band explains
@@ -37,7 +36,7 @@ export function foldedComb(
   family: HarmonicFamily,
   sampleRateHz: number,
   binHz: number,
-  combsTried: number,
+  familiesTried: number,
 ): FoldedMatch[] {
   const spacingHz = family.fundamentalHz;
   const candidates = free.filter((index) => !isInSkirt(tones, index, family));
@@ -46,13 +45,12 @@ export function foldedComb(
     for (const side of [-1, 1] as const) {
       const offset = ((((side * fold * sampleRateHz) % spacingHz) + spacingHz) % spacingHz) / spacingHz;
       const { matches, expected, toleranceHz } = matchComb(tones, candidates, family, fold * sampleRateHz, side, binHz);
-      if (matches.length < leastMatches) continue;
-      const leastDistance = Math.max(2 * toleranceHz, 2 * binHz) / spacingHz;
+      if (matches.length === 0) continue;
+      const leastDistance = Math.max(1.5 * toleranceHz, binHz) / spacingHz;
       if (ownParts.some((part) => Math.abs(offset - part) < leastDistance)) continue;
-      const farthestHz = matches.reduce((most, one) => Math.max(most, one.distanceHz + one.errorHz), 0);
-      const asOneComb = (2 * farthestHz) / spacingHz;
+      const asOneComb = (2 * combOffsetHz(matches, family.fundamentalErrorHz)) / spacingHz;
       const asMany = poissonTail(matches.length, expected);
-      const chance = Math.min(1, Math.max(asOneComb, asMany) * combsTried);
+      const chance = Math.min(1, Math.max(asOneComb, asMany) * combWeight(fold) * familiesTried);
       for (const { tone, multiple, trueHz } of matches) {
         found.push({ tone, multiple, trueFrequencyHz: trueHz, chanceProbability: chance });
       }
@@ -64,32 +62,71 @@ export function foldedComb(
 function matchComb(
   tones: ToneMeasurement[],
   candidates: number[],
-  { fundamentalHz, fundamentalErrorHz }: HarmonicFamily,
+  { fundamentalHz, fundamentalErrorHz, relativeWander }: HarmonicFamily,
   centreHz: number,
   side: -1 | 1,
   binHz: number,
 ): { matches: Match[]; expected: number; toleranceHz: number } {
   const matches: Match[] = [];
   let expected = 0;
-  let widestHz = 0;
+  const tolerances: number[] = [];
   for (const index of candidates) {
     const tone = tones[index] as ToneMeasurement;
     const placeHz = centreHz + side * tone.frequencyHz;
     const multiple = Math.round(placeHz / fundamentalHz);
-    const toleranceHz = matchSigmas * Math.hypot(toneErrorHz(tone, binHz), multiple * fundamentalErrorHz);
+    const toleranceHz =
+      matchSigmas * Math.hypot(toneErrorHz(tone, binHz), relativeWander * placeHz, multiple * fundamentalErrorHz);
     expected += Math.min(1, (2 * toleranceHz) / fundamentalHz);
-    const distanceHz = Math.abs(placeHz - multiple * fundamentalHz);
-    if (toleranceHz > 0.15 * fundamentalHz || distanceHz > toleranceHz) continue;
-    widestHz = Math.max(widestHz, toleranceHz);
+    const distanceHz = placeHz - multiple * fundamentalHz;
+    if (toleranceHz > 0.15 * fundamentalHz || Math.abs(distanceHz) > toleranceHz) continue;
+    tolerances.push(toleranceHz);
     matches.push({
       tone: index,
       multiple,
       trueHz: multiple * fundamentalHz,
       distanceHz,
-      errorHz: Math.hypot(tone.boundHz, tone.wanderHz, multiple * fundamentalErrorHz),
+      errorHz: Math.hypot(tone.boundHz, tone.wanderHz, relativeWander * placeHz, leastErrorBins * binHz),
     });
   }
-  return { matches, expected, toleranceHz: widestHz };
+  return { matches, expected, toleranceHz: tolerances.sort((a, b) => a - b)[tolerances.length >> 1] ?? 0 };
+}
+
+/** The family with its fundamental refitted to folded members too; null where there are none. */
+export function refineFamily(
+  family: HarmonicFamily,
+  tones: ToneMeasurement[],
+  matches: FoldedMatch[],
+  sampleRateHz: number,
+): HarmonicFamily | null {
+  if (matches.length === 0) return null;
+  let weight = family.fundamentalErrorHz ** -2;
+  let weighted = weight * family.fundamentalHz;
+  for (const { tone: index, multiple, trueFrequencyHz } of matches) {
+    const tone = tones[index] as ToneMeasurement;
+    const fold = Math.round(trueFrequencyHz / sampleRateHz) * sampleRateHz;
+    const placeHz = fold + Math.sign(trueFrequencyHz - fold) * tone.frequencyHz;
+    const errorHz = Math.hypot(tone.boundHz, tone.wanderHz, family.relativeWander * placeHz, 1e-9 * placeHz);
+    const w = (multiple / errorHz) ** 2;
+    weight += w;
+    weighted += (w * placeHz) / multiple;
+  }
+  return { ...family, fundamentalHz: weighted / weight, fundamentalErrorHz: weight ** -0.5 };
+}
+
+/** No real source is steadier than this part of 1/T. */
+const leastErrorBins = 0.02;
+
+/** Weighted mean of the matches' signed distances, and its standard error: where the comb as a whole lies. */
+function combOffsetHz(matches: Match[], fundamentalErrorHz: number): number {
+  let [weights, weighted, multiples] = [0, 0, 0];
+  for (const { distanceHz, errorHz, multiple } of matches) {
+    const weight = errorHz ** -2;
+    weights += weight;
+    weighted += weight * distanceHz;
+    multiples += weight * multiple;
+  }
+  const errorHz = Math.hypot(1 / Math.sqrt(weights), (multiples / weights) * fundamentalErrorHz);
+  return Math.abs(weighted / weights) + errorHz;
 }
 
 /** Within this many times a member's wander, and this much weaker, a line is the member's own skirt. */

@@ -4,7 +4,7 @@ export interface HarmonicFamily {
   name: string;
   fundamentalHz: number;
   fundamentalErrorHz: number;
-  /** Median of the members' wander over their frequency: how far the speed itself wanders. */
+  /** How far the speed itself wanders, over the speed: what all members' wander has in common. */
   relativeWander: number;
   /** Index of the tone and its multiple. */
   members: { tone: number; multiple: number }[];
@@ -22,6 +22,60 @@ const largestBlindChance = 1e-4;
 export const toneErrorHz = (tone: ToneMeasurement, binHz: number): number =>
   Math.hypot(Math.max(tone.boundHz, tone.wanderHz), 0.1 * binHz);
 
+/** One pass through the tones in rising order; see followFamily. */
+function followOnce(
+  tones: ToneMeasurement[],
+  name: string,
+  startHz: number,
+  startErrorHz: number,
+  binHz: number,
+  isStated: boolean,
+  relativeWander: number,
+): HarmonicFamily {
+  let fundamentalHz = startHz;
+  let errorHz = startErrorHz;
+  let weight = 1 / Math.max(startErrorHz, 1e-12) ** 2;
+  let weighted = weight * startHz;
+  const members: HarmonicFamily['members'] = [];
+  let expected = 0;
+  const order = tones.map((tone, index) => ({ tone, index })).sort((a, b) => a.tone.frequencyHz - b.tone.frequencyHz);
+  let next = 0;
+  while (next < order.length) {
+    const multiple = Math.round((order[next] as { tone: ToneMeasurement }).tone.frequencyHz / fundamentalHz);
+    // All tones around one multiple compete: the nearest in its own tolerance is the member, the others are not.
+    let best: { index: number; tone: ToneMeasurement; errorHz: number; sigmas: number } | null = null;
+    for (; next < order.length; next++) {
+      const { tone, index } = order[next] as { tone: ToneMeasurement; index: number };
+      if (Math.round(tone.frequencyHz / fundamentalHz) !== multiple) break;
+      if (multiple < 1 || multiple > mostMultiples) continue;
+      const toneError = Math.hypot(toneErrorHz(tone, binHz), relativeWander * tone.frequencyHz);
+      const toleranceHz = matchSigmas * Math.hypot(toneError, multiple * errorHz);
+      expected += Math.min(1, (2 * toleranceHz) / fundamentalHz);
+      const distanceHz = Math.abs(tone.frequencyHz - multiple * fundamentalHz);
+      if (2 * toleranceHz > 0.5 * fundamentalHz || distanceHz > toleranceHz) continue;
+      const sigmas = distanceHz / toleranceHz;
+      if (best === null || sigmas < best.sigmas) best = { index, tone, errorHz: toneError, sigmas };
+    }
+    if (best === null) continue;
+    members.push({ tone: best.index, multiple });
+    const w = (multiple / best.errorHz) ** 2;
+    weight += w;
+    weighted += (w * best.tone.frequencyHz) / multiple;
+    fundamentalHz = weighted / weight;
+    errorHz = Math.sqrt(1 / weight);
+  }
+  const distinct = new Set(members.map(({ multiple }) => multiple)).size;
+  return {
+    name,
+    fundamentalHz,
+    fundamentalErrorHz: errorHz,
+    relativeWander: commonWander(members.map(({ tone }) => relativeWanderOf(tones[tone]))),
+    members,
+    chanceProbability: isStated ? 0 : poissonTail(distinct, expected),
+    isStated,
+  };
+}
+
 /**
  * Follows a fundamental through the tones: the nearest tone to each multiple within its tolerance; fundamental and its error are
  * refitted as members are found, so that the tolerance at high multiples shrinks.
@@ -36,45 +90,19 @@ export function followFamily(
   binHz: number,
   isStated: boolean,
 ): HarmonicFamily {
-  let fundamentalHz = startHz;
-  let errorHz = startErrorHz;
-  let weight = 1 / Math.max(startErrorHz, 1e-12) ** 2;
-  let weighted = weight * startHz;
-  const members: HarmonicFamily['members'] = [];
-  let expected = 0;
-  const order = tones.map((tone, index) => ({ tone, index })).sort((a, b) => a.tone.frequencyHz - b.tone.frequencyHz);
-  for (const { tone, index } of order) {
-    const multiple = Math.round(tone.frequencyHz / fundamentalHz);
-    if (multiple < 1 || multiple > mostMultiples) continue;
-    const error = toneErrorHz(tone, binHz);
-    const tolerance = matchSigmas * Math.hypot(error, multiple * errorHz);
-    expected += Math.min(1, (2 * tolerance) / fundamentalHz);
-    if (2 * tolerance > 0.5 * fundamentalHz) continue;
-    if (Math.abs(tone.frequencyHz - multiple * fundamentalHz) > tolerance) continue;
-    members.push({ tone: index, multiple });
-    const w = (multiple / error) ** 2;
-    weight += w;
-    weighted += (w * tone.frequencyHz) / multiple;
-    fundamentalHz = weighted / weight;
-    errorHz = Math.sqrt(1 / weight);
-  }
-  const distinct = new Set(members.map(({ multiple }) => multiple)).size;
-  return {
-    name,
-    fundamentalHz,
-    fundamentalErrorHz: errorHz,
-    relativeWander: median(members.map(({ tone }) => relativeWanderOf(tones[tone]))),
-    members,
-    chanceProbability: isStated ? 0 : poissonTail(distinct, expected),
-    isStated,
-  };
+  const first = followOnce(tones, name, startHz, startErrorHz, binHz, isStated, 0);
+  if (first.relativeWander === 0) return first;
+  // A speed that wanders puts each member off by its share, each at other times: all are known that much worse.
+  return followOnce(tones, name, startHz, startErrorHz, binHz, isStated, first.relativeWander);
 }
 
 const relativeWanderOf = (tone: ToneMeasurement | undefined): number =>
   tone === undefined || tone.frequencyHz === 0 ? 0 : tone.wanderHz / tone.frequencyHz;
 
-function median(values: number[]): number {
-  return [...values].sort((a, b) => a - b)[values.length >> 1] ?? 0;
+/** A speed's wander shows in all members alike; a close neighbour's beat adds to one. None where most show none. */
+function commonWander(relative: number[]): number {
+  const shown = relative.filter((value) => value > 0);
+  return 2 * shown.length > relative.length ? Math.min(...shown) : 0;
 }
 
 /** The best family among tones that nothing explains yet, all fundamentals tried counted; null where none stands. */

@@ -4,7 +4,7 @@ import type { Thresholds } from '../schemas/thresholds.js';
 import type { FoldEvidence } from './FoldEvidence.js';
 import { aliasHz, candidatesHz, zoneOf } from './foldArithmetic.js';
 import { explainSideBands } from './explainSideBands.js';
-import { combsPerFamily, foldedComb, type FoldedMatch } from './foldedComb.js';
+import { foldedComb, type FoldedMatch, refineFamily } from './foldedComb.js';
 import { foldedToneFinding } from './foldedToneFinding.js';
 import { bestBlindFamily, followFamily, type HarmonicFamily, matchSigmas, toneErrorHz } from './harmonicFamily.js';
 import { judgeMovedTones } from './judgeMovedTones.js';
@@ -16,6 +16,8 @@ const candidatesListed = 4;
 const mostBlindFamilies = 4;
 /** A match more likely by chance than not is none. */
 const leastFoldedConfidence = 0.8;
+/** Captures with a family in band of which one in six also holds folded members: a match by chance weighs that much more. */
+const priorOdds = 0.2;
 /** Below the total power by the protection and this much more, a folded tone is no reason to call a capture folded. */
 const immaterialBelowDb = 25;
 const largestLogRatio = 6;
@@ -101,9 +103,13 @@ function explainFamilies(
     explainInBand(tones, family);
     if (family.members.length < 2) return;
     families++;
-    const combsTried = families * combsPerFamily;
-    for (const match of foldedComb(measured, free(), family, sampleRateHz, binHz, combsTried)) {
-      explainFolded(tones[match.tone] as Tone, match, family);
+    const matches = foldedComb(measured, free(), family, sampleRateHz, binHz, families);
+    for (const match of matches) explainFolded(tones[match.tone] as Tone, match, family);
+    // Folded members know the fundamental better, by their multiple: with it further combs come within reach.
+    const better = refineFamily(family, measured, matches.filter(isSure), sampleRateHz);
+    if (better === null) return;
+    for (const match of foldedComb(measured, free(), better, sampleRateHz, binHz, families)) {
+      explainFolded(tones[match.tone] as Tone, match, better);
     }
   };
   for (const { name, frequencyHz, errorHz } of stated) {
@@ -115,6 +121,9 @@ function explainFamilies(
     explain(family);
   }
 }
+
+const confidenceOf = ({ chanceProbability }: FoldedMatch): number => 1 / (1 + chanceProbability / priorOdds);
+const isSure = (match: FoldedMatch): boolean => confidenceOf(match) >= leastFoldedConfidence;
 
 function explainInBand(tones: Tone[], family: HarmonicFamily): void {
   for (const { tone: index, multiple } of family.members) {
@@ -130,7 +139,7 @@ function explainInBand(tones: Tone[], family: HarmonicFamily): void {
 }
 
 function explainFolded(tone: Tone, match: FoldedMatch, family: HarmonicFamily): void {
-  const confidence = 1 - match.chanceProbability;
+  const confidence = confidenceOf(match);
   if (tone.explanation !== 'unexplained' || confidence < leastFoldedConfidence) return;
   Object.assign(tone, {
     explanation: 'foldedHarmonic',

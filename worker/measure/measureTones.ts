@@ -9,7 +9,10 @@ import type { PickedTone } from './pickTones.js';
 /** A coherent fit that explains less than this share of the peak's power means that the tone is no steady line. */
 const leastCoherentShare = 0.3;
 
-/** Least-squares figures of picked tones from their demodulated blocks; a tone that wanders too far keeps its peak's figures. */
+/**
+ * Least-squares figures of picked tones from their demodulated blocks; a tone that wanders too far keeps its peak's figures.
+ * A steady tone stands out by what a Hann periodogram of the whole capture would show, 1.5 bins wide (Harris 1978).
+ */
 export function measureTones(
   picked: PickedTone[],
   refined: RefinedTone[],
@@ -31,7 +34,9 @@ export function measureTones(
       boundHz: Math.min(fineHz, boundHz),
       wanderHz: isSteady ? (wander * sampleRateHz) / (2 * Math.PI) : Math.max(tone.widthHz, fineHz / 2),
       levelDb: decibels(Math.max(coherent, tone.power)),
-      standsOutDb: decibels(tone.ratio),
+      standsOutDb: decibels(
+        isSteady ? Math.max(tone.ratio, coherent / (1.5 * tone.floor * (sampleRateHz / frames))) : tone.ratio,
+      ),
       floorDb: decibels(tone.floor),
       peaksPerHz: tone.peaksPerHz,
     };
