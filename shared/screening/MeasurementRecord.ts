@@ -1,3 +1,5 @@
+import type { OrderMeasurement } from './OrderMeasurement.js';
+
 /**
  * What the worker measured on one channel: everything the judge needs and nothing that depends on a threshold.
  * Plain JSON: no NaN, no Infinity, no typed arrays. Unless a name ends in another unit, levels are in dB re
@@ -29,6 +31,8 @@ export interface MeasurementRecord {
   tones: ToneMeasurement[];
   irregular: IrregularMeasurement | null;
   companion: CompanionMeasurement | null;
+  /** Orders and sweeps by stretch; missing in older records, null where the channel is too short, irregular or silent. */
+  orders?: OrderMeasurement[] | null;
 }
 
 export type MeasurementObstacle = 'rateUnknown' | 'tooFewSamples' | 'silent' | 'notFinite' | 'irregularStamps';

@@ -10,6 +10,7 @@ import { bandEdgeFigures, judgeEdge } from './judgeEdge.js';
 import { judgeIntegrity } from './judgeIntegrity.js';
 import { judgeIrregular } from './judgeIrregular.js';
 import { judgeLockedSources } from './judgeLockedSources.js';
+import { judgeOrders } from './judgeOrders.js';
 import { judgeProtection } from './judgeProtection.js';
 import { judgeTones } from './judgeTones.js';
 import type { MeasurementRecord } from './MeasurementRecord.js';
@@ -72,7 +73,10 @@ export function judgeChannel(
 function gatherEvidence(record: MeasurementRecord, thresholds: Thresholds, sheet: AcquisitionSheet): FoldEvidence {
   if (record.irregular !== null) return judgeIrregular(record.irregular, thresholds);
   const binHz = record.durationS === null || record.durationS === 0 ? 0 : 1 / record.durationS;
-  return joinEvidence([judgeTones(record, thresholds, sheet), judgeCompanion(record, thresholds)], binHz);
+  return joinEvidence(
+    [judgeTones(record, thresholds, sheet), judgeOrders(record, thresholds, sheet), judgeCompanion(record, thresholds)],
+    binHz,
+  );
 }
 
 /** From the sheet; without one from 0 Hz to fs over the practice factor. */

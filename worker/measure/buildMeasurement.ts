@@ -6,6 +6,7 @@ import type {
   TimeStampMeasurement,
   ToneMeasurement,
 } from '../../shared/screening/MeasurementRecord.js';
+import type { OrderMeasurement } from '../../shared/screening/OrderMeasurement.js';
 import { decibels } from '../dsp/decibels.js';
 import type { RaisedRate } from '../dsp/RaisedRateMeter.js';
 import { removeTones } from '../dsp/removeTones.js';
@@ -23,6 +24,7 @@ export interface ChannelParts {
   tones: ToneMeasurement[];
   irregular: IrregularMeasurement | null;
   raised: RaisedRate | null;
+  orders: OrderMeasurement[] | null;
   damageLeftOut: boolean;
 }
 
@@ -91,6 +93,7 @@ export function buildMeasurement(source: SampleSource, parts: ChannelParts, chan
       tones: hasSpectra ? parts.tones : [],
       irregular: isSilent ? null : parts.irregular,
       companion: null,
+      orders: hasSpectra ? parts.orders : null,
     },
     spectra: spectraKept,
   };

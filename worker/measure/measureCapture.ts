@@ -2,6 +2,7 @@ import type { AcquisitionSheet } from '../../shared/schemas/acquisitionSheet.js'
 import type { IrregularMeasurement } from '../../shared/screening/MeasurementRecord.js';
 import type { SampleSource } from '../readers/SampleSource.js';
 import { RaisedRateMeter } from '../dsp/RaisedRateMeter.js';
+import { addOrders } from './addOrders.js';
 import { addTones } from './addTones.js';
 import { buildMeasurement, type ChannelParts } from './buildMeasurement.js';
 import type { ChannelMeasurement } from './ChannelMeasurement.js';
@@ -41,13 +42,17 @@ export function measureCapture(
     tones: [],
     irregular: null,
     raised: null,
+    orders: null,
     damageLeftOut: false,
   }));
   const rateHz = source.sampleRateHz;
   const isIrregular = source.timeStamps?.irregular === true;
   if (rateHz !== null && source.frameCount >= leastSamples) {
     if (isIrregular) addIrregular(source, sheet, parts, pass);
-    else addSpectra(source, rateHz, parts, pass);
+    else {
+      addSpectra(source, rateHz, parts, pass);
+      addOrders(source, sheet, rateHz, parts, pass);
+    }
   }
   options.onProgress?.(1);
   return parts.map((part, channel) => buildMeasurement(source, part, channel));

@@ -1,0 +1,147 @@
+import type { OrderLawMeasurement, OrderMeasurement } from '../../shared/screening/OrderMeasurement.js';
+import { chirpVotes } from '../dsp/warp/chirpVotes.js';
+import { decibels } from '../dsp/decibels.js';
+import { findLaws, type FoundLaw } from '../dsp/warp/findLaws.js';
+import { flattenSpectrum, type FlatSignal } from '../dsp/warp/flattenSpectrum.js';
+import { type FoldedLine, foldedLines } from '../dsp/warp/foldedLines.js';
+import { isSameRidge } from '../dsp/warp/isSameRidge.js';
+import { reversedLaw, type SpeedLaw } from '../dsp/warp/SpeedLaw.js';
+import { taperEnds } from '../dsp/warp/taperEnds.js';
+import { type TransformOf, transformsBySize } from '../dsp/warp/transformsBySize.js';
+import { binPowers, warpedLines } from '../dsp/warp/warpedLines.js';
+
+export interface OrderOptions {
+  sampleRateHz: number;
+  /** Orders are looked for up to here. */
+  highestHz: number;
+  /** Time of the first sample. */
+  fromS: number;
+}
+
+export const leastOrderSamples = 2048;
+const voteLengths = [256, 512, 1024, 2048, 4096, 8192, 16384];
+/** Longer stretches use every second frame length. */
+const longStretch = 40_000;
+const mostLinesKept = 32;
+/** A line enters the record from here; whether it counts is the judge's to say. */
+const leastKeptRatio = 10;
+const inBandRatio = 10;
+/** Near a multiple of fs/2 a folded order follows the reversed law for a while: such lines are no measure of chance. */
+const alikeBins = 12;
+
+/**
+ * Orders beyond fs/2 in one stretch of a channel: the relative speed law is found blind from the slopes of all lines, the
+ * stretch is transformed in warped time, where everything that turns with it is a steady line at its true frequency, and
+ * the lines beyond fs/2 are measured where they are folded. The reversed law gives the height that no folding explains.
+ * @returns null where the stretch is too short
+ */
+export function measureOrders(samples: Float64Array, options: OrderOptions): OrderMeasurement | null {
+  const { length } = samples;
+  if (length < leastOrderSamples) return null;
+  const mean = samples.reduce((sum, value) => sum + value, 0) / length;
+  const flat = flattenSpectrum(samples.map((value) => value - mean));
+  const step = length > longStretch ? 2 : 1;
+  const votes = voteLengths
+    .filter((frame, index) => frame <= length / 4 && index % step === 0)
+    .flatMap((frame) => chirpVotes(flat.samples, frame));
+  const tapered = taperEnds(flat.samples);
+  const transformOf = transformsBySize();
+  const measured = findLaws(tapered, votes, transformOf).map((found) => ({
+    law: found.law,
+    measured: measureLaw(found, tapered, flat, options, transformOf),
+  }));
+  const laws = dropSameRidges(measured, options.sampleRateHz);
+  return {
+    fromS: options.fromS,
+    toS: options.fromS + length / options.sampleRateHz,
+    highestHz: options.highestHz,
+    laws,
+  };
+}
+
+function measureLaw(
+  { law, sharpness, steadySharpness }: FoundLaw,
+  tapered: Float64Array,
+  flat: FlatSignal,
+  { sampleRateHz, highestHz, fromS }: OrderOptions,
+  transformOf: TransformOf,
+): OrderLawMeasurement {
+  const { length } = law;
+  const durationS = length / sampleRateHz;
+  const count = Math.ceil((highestHz / sampleRateHz) * length) + 64;
+  const transform = transformOf(count);
+  const spectrum = transform.forward(law.warped, tapered);
+  const speeds = [0, 0.25, 0.5, 0.75, 1].map(law.speedAt);
+  const fastest = Math.max(...speeds);
+  const inBand = warpedLines(binPowers(spectrum), 3, Math.floor(length / 2 / fastest), inBandRatio);
+  const lines = foldedLines(spectrum, law).filter(({ ratio }) => ratio > leastKeptRatio);
+  const chanceRatio =
+    lines.length === 0 ? 0 : highestByChance(transform.forward(reversedLaw(law).warped, tapered), law);
+  return {
+    mode: 'blind',
+    speedFrom: law.speedAt(0),
+    speedTo: law.speedAt(1),
+    speedChange: Math.max(...speeds) - Math.min(...speeds),
+    sharpness,
+    steadySharpness,
+    inBandLines: inBand
+      .slice(0, mostLinesKept)
+      .map(({ bin, ratio }) => ({ frequencyHz: bin / durationS, standsOutDb: decibels(ratio) })),
+    linesTried: count,
+    chanceStandsOutDb: decibels(Math.max(1, chanceRatio)),
+    lines: lines.slice(0, mostLinesKept).map((line) => {
+      const gain = flat.gainAt(line.foldedFrequency);
+      return {
+        frequencyHz: line.foldedFrequency * sampleRateHz,
+        trueFrequencyHz: line.trueFrequency * sampleRateHz,
+        meanFrequencyHz: line.nu * sampleRateHz,
+        uncertaintyHz: Math.sqrt(6 / line.ratio) / (Math.PI * durationS * line.foldedShare),
+        levelDb: decibels((line.power * line.foldedShare) / gain ** 2),
+        standsOutDb: decibels(line.ratio),
+        inBandStandsOutDb: line.inBandRatio > 1 ? decibels(line.inBandRatio) : null,
+        foldedShare: line.foldedShare,
+        apartBins: line.apartBins,
+        fromS: fromS + line.from * durationS,
+        toS: fromS + line.to * durationS,
+      };
+    }),
+  };
+}
+
+/** The highest line beyond fs/2 under a law that nothing in the stretch follows. */
+function highestByChance(spectrum: Float64Array, law: FoundLaw['law']): number {
+  const reversed = reversedLaw(law);
+  const isOther = (line: FoldedLine): boolean =>
+    Math.abs(2 * line.nu - Math.round(2 * line.nu)) * line.apartBins > alikeBins;
+  return foldedLines(spectrum, reversed).filter(isOther)[0]?.ratio ?? 0;
+}
+
+interface MeasuredLaw {
+  law: SpeedLaw;
+  measured: OrderLawMeasurement;
+}
+
+/**
+ * One ridge can follow two laws, each folded where the other is in band: a sweep up through fs/2, or one down from beyond.
+ * The reading with the shorter folded part is kept.
+ */
+function dropSameRidges(laws: MeasuredLaw[], sampleRateHz: number): OrderLawMeasurement[] {
+  return laws.map(({ law, measured }) => ({
+    ...measured,
+    lines: measured.lines.filter(
+      (line) =>
+        !laws.some(
+          (other) =>
+            other.law !== law &&
+            other.measured.lines.some(
+              (twin) =>
+                twin.foldedShare < line.foldedShare &&
+                isSameRidge(
+                  { law, nu: line.meanFrequencyHz / sampleRateHz },
+                  { law: other.law, nu: twin.meanFrequencyHz / sampleRateHz },
+                ),
+            ),
+        ),
+    ),
+  }));
+}
