@@ -7,12 +7,20 @@ const sheet: AcquisitionSheet = {
   filter: { type: 'butterworth', order: 4, cornerHz: 800 },
   sources: [{ name: 'supply', frequencyHz: 50 }, { frequencyHz: 24.8 }],
   unit: 'g',
-  pair: 'A',
+  noiseFloorDb: -110,
 };
 
 describe('sheetFields', () => {
   it('reads back what it wrote, with what the form does not show', () => {
     expect(parseDraft(toDraft(sheet), sheet)).toEqual({ sheet, problems: {} });
+  });
+
+  it('shows pair label and companion, and takes one away that was emptied', () => {
+    const draft = toDraft({ pair: 'A', companion: 'fast.wav' });
+    expect(draft).toMatchObject({ pair: 'A', companion: 'fast.wav' });
+    expect(parseDraft({ ...draft, pair: '' }, { pair: 'A', companion: 'fast.wav' }).sheet).toEqual({
+      companion: 'fast.wav',
+    });
   });
 
   it('takes a decimal comma', () => {
