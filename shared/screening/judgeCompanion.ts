@@ -1,16 +1,15 @@
 import type { Finding } from '../schemas/screening.js';
 import type { Thresholds } from '../schemas/thresholds.js';
-import { companionGainDb } from './companionGain.js';
 import type { FoldEvidence } from './FoldEvidence.js';
 import { formatHz } from './formatNumber.js';
 import { judgeFoldedShare } from './judgeFoldedShare.js';
-import { judgeMove } from './judgeMove.js';
+import { judgeMoves } from './judgeMoves.js';
 import type { MeasurementRecord } from './MeasurementRecord.js';
 
 /** What counts as folded: over this share of the total power. */
 const materialShareDb = -40;
-/** The cross-correlation shows one event in both captures where chance is below this. */
-export const alignedChance = 1e-4;
+/** Repeated captures are taken to show one event where tones stay by accident less often than this. */
+const largestEventChance = 0.05;
 const largestRatio = 6;
 /** Log ratios of a companion that shows no folding: of all that it carries, and of the tones alone. */
 const clean = { everything: -4, tones: -1.5 } as const;
@@ -26,27 +25,24 @@ export function judgeCompanion(record: MeasurementRecord, thresholds: Thresholds
   const moves = companion?.moves ?? null;
   if (companion === null || moves === null || record.sampleRateHz === null) return none;
   if (Math.abs(companion.sampleRateHz / record.sampleRateHz - 1) < 1e-6) return none;
-  const gainDb = companionGainDb(moves);
   const totalDb = record.level?.powerDb ?? 0;
-  const judged = record.tones
-    .filter((tone) => tone.standsOutDb >= thresholds.toneStandsOutDb && tone.levelDb > totalDb + materialShareDb)
-    .flatMap((tone) => {
-      const move = moves.find(({ frequencyHz }) => frequencyHz === tone.frequencyHz);
-      return move === undefined || gainDb === null ? [] : [{ tone, ...judgeMove(move, tone, companion, gainDb) }];
-    });
+  const compared = record.tones.filter((tone) => tone.standsOutDb >= thresholds.toneStandsOutDb);
+  const judgedMoves = judgeMoves(compared, companion);
+  const judged = compared.flatMap((tone, index) => {
+    const one = judgedMoves?.tones[index] ?? null;
+    return one === null || tone.levelDb < totalDb + materialShareDb ? [] : [{ tone, ...one }];
+  });
   const count = (outcome: string): number => judged.filter((one) => one.outcome === outcome).length;
   const alignment = companion.alignment ?? null;
-  const isAligned = alignment !== null && alignment.chanceProbability < alignedChance;
+  const isAligned = (companion.folded ?? null) !== null || moves.some((move) => move.isAligned);
   const findings: Finding[] = judged.flatMap(({ outcome, tone, candidatesHz }): Finding[] =>
     outcome !== 'ambiguous' ? [] : [ambiguous(tone.frequencyHz, candidatesHz, companion.name, companion.sampleRateHz)],
   );
   const share =
     isAligned && companion.folded ? judgeFoldedShare(companion, companion.folded, thresholds.confidence) : null;
-  const standing = count('stays') + count('moved') + count('ambiguous');
-  if (share === null && standing === 0) {
-    const reason = isAligned
-      ? 'the captures have too little in common'
-      : 'the captures share neither a course over time nor a tone';
+  const isOneEvent = isAligned || (judgedMoves !== null && judgedMoves.eventChance < largestEventChance);
+  if (!isOneEvent) {
+    const reason = 'the two captures have neither a course over time nor enough tones in common';
     return { ...none, findings: [unusable(companion.name, reason, alignment?.agreement ?? 0, judged.length)] };
   }
   if (share !== null) findings.push(share.finding);

@@ -18,6 +18,14 @@ export interface JudgedMove {
   candidatesHz: number[];
   /** Chance that something unrelated stands at the place found, all places tried counted. */
   chanceProbability: number;
+  /** Places looked at before and with the one found. */
+  tried: number;
+}
+
+/** What stands at a place is of the tone's kind, and of the level that sensors and filters can make of it. */
+export function fitsPlace(move: ToneMove, place: TonePlace, gainDb: number): boolean {
+  const stepDb = move.isAligned ? largestStepDb.aligned : largestStepDb.repeated;
+  return isOccupied(place, leastStandOutDb) && Math.abs(place.ratioDb - gainDb) < stepDb;
 }
 
 /**
@@ -32,16 +40,21 @@ export function judgeMove(
   gainDb: number,
 ): JudgedMove {
   const stepDb = move.isAligned ? largestStepDb.aligned : largestStepDb.repeated;
-  const fits = (place: TonePlace): boolean =>
-    isOccupied(place, leastStandOutDb) && Math.abs(place.ratioDb - gainDb) < stepDb;
+  const fits = (place: TonePlace): boolean => fitsPlace(move, place, gainDb);
   const [same, ...others] = move.places;
-  if (same === undefined) return { outcome: 'hidden', place: null, candidatesHz: [], chanceProbability: 1 };
+  if (same === undefined) return { outcome: 'hidden', place: null, candidatesHz: [], chanceProbability: 1, tried: 0 };
   const toleranceHz = (move.isAligned ? 0.75 : 2) / Math.max(move.soundsS, 1e-9);
   const isSamePlace = (place: TonePlace): boolean => Math.abs(place.expectedHz - same.expectedHz) < toleranceHz;
   if (fits(same)) {
     const alike = others.filter((place) => isSamePlace(place) && fits(place));
     const candidatesHz = [same.trueHz, ...alike.map(({ trueHz }) => trueHz)];
-    return { outcome: alike.length > 0 ? 'ambiguous' : 'stays', place: same, candidatesHz, chanceProbability: 0 };
+    return {
+      outcome: alike.length > 0 ? 'ambiguous' : 'stays',
+      place: same,
+      candidatesHz,
+      chanceProbability: 0,
+      tried: 0,
+    };
   }
   const levelDb = tone.levelDb + gainDb;
   const alike = companion.tones.filter((other) => Math.abs(other.levelDb - levelDb) < stepDb);
@@ -57,8 +70,8 @@ export function judgeMove(
     const candidatesHz = others
       .filter((other) => Math.abs(other.expectedHz - place.expectedHz) < toleranceHz && fits(other))
       .map(({ trueHz }) => trueHz);
-    return { outcome: 'moved', place, candidatesHz, chanceProbability };
+    return { outcome: 'moved', place, candidatesHz, chanceProbability, tried };
   }
   const isVisible = gainDb > same.besideDb + 2 * leastStandOutDb && same.ratioDb < gainDb - stepDb;
-  return { outcome: isVisible ? 'absent' : 'hidden', place: null, candidatesHz: [], chanceProbability: 1 };
+  return { outcome: isVisible ? 'absent' : 'hidden', place: null, candidatesHz: [], chanceProbability: 1, tried };
 }

@@ -8,8 +8,12 @@ import { zoneCells } from './ZoneCells.js';
 
 /** Highest frequency looked for where the sheet states no sensor band, as a multiple of the higher rate. */
 const defaultReach = 2;
-/** Below this chance the cross-correlation shows one event in both captures. */
+/**
+ * The cross-correlation shows one event where chance is below this and the phases agree at least so far: hum and slow drifts
+ * that many captures share agree a little and mean nothing.
+ */
 const alignedChance = 1e-4;
+const leastAgreement = 0.15;
 
 /** Compares one channel of a capture with its companion's: the lag, and where each tone stands in the companion. */
 export function measureCompanion(
@@ -19,7 +23,9 @@ export function measureCompanion(
   sheet: AcquisitionSheet,
 ): CompanionMeasurement {
   const alignment = alignCaptures(own.samples, own.rateHz, other.samples, other.rateHz);
-  const lagS = alignment !== null && alignment.chanceProbability < alignedChance ? alignment.lagS : null;
+  const isAligned =
+    alignment !== null && alignment.chanceProbability < alignedChance && alignment.agreement >= leastAgreement;
+  const lagS = isAligned ? alignment.lagS : null;
   const reachHz = sheet.sensorBandHz ?? defaultReach * Math.max(own.rateHz, other.rateHz);
   return {
     name,
