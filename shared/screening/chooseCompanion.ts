@@ -63,40 +63,47 @@ function chooseNamed<C extends PairableCapture>(
 const severalNamed = (name: string, count: number, where: string): string =>
   `${count} captures in ${where} are called ${name}. Name the companion with its folder, or upload it to this batch.`;
 
-function choosePaired<C extends PairableCapture>(label: string, others: readonly C[]): CompanionChoice<C> {
-  const paired = others.filter(({ sheet }) => sheet.pair === label);
-  if (paired.length === 1 && paired[0]) return { companion: paired[0], note: null };
-  return {
-    companion: null,
-    note:
-      paired.length === 0
-        ? `No other capture of the batch carries the pair label ${label} yet. Once one does, this capture is screened again.`
-        : `${paired.length} other captures of the batch carry the pair label ${label}. Name the companion in the acquisition sheet.`,
-  };
-}
-
 const rateOf = ({ sheet, sampleRateHz }: PairableCapture): number | null => sheet.sampleRateHz ?? sampleRateHz;
 
+/** Of several with the label the fastest, which shows most; it can be told once the rates of all are known. */
+function choosePaired<C extends PairableCapture>(label: string, others: readonly C[]): CompanionChoice<C> {
+  const labelled = others.filter(({ sheet }) => sheet.pair === label);
+  const sound = labelled.filter(({ state }) => state !== 'failed');
+  const [first, ...more] = sound.length > 0 ? sound : labelled;
+  if (!first) {
+    return {
+      companion: null,
+      note: `No other capture of the batch carries the pair label ${label} yet. Once one does, this capture is screened again.`,
+    };
+  }
+  if (more.some((one) => rateOf(one) === null) || (more.length > 0 && rateOf(first) === null)) {
+    const note = `${1 + more.length} other captures carry the pair label ${label}. Once all of them are screened, this capture is compared with the fastest.`;
+    return { companion: null, note };
+  }
+  const companion = more.reduce((best, one) => ((rateOf(one) ?? 0) > (rateOf(best) ?? 0) ? one : best), first);
+  return { companion, note: null };
+}
+
 /**
- * Two captures of one logger at one position at two rates, and no third one there: then each is the other's only candidate.
- * When they were recorded is not known here; whether they hold the same event shows when they are aligned.
+ * The only capture of the same logger at the same position at another rate, once the rates of all there are known. When they
+ * were recorded is not known here; whether they hold the same event shows when they are aligned.
  */
 function findByPlace<C extends PairableCapture>(capture: C, others: readonly C[]): C | null {
   const { logger, position } = capture.sheet;
-  if (!logger || !position) return null;
+  const rateHz = rateOf(capture);
+  if (!logger || !position || rateHz === null) return null;
   const there = others.filter(
     ({ sheet, state }) => sheet.logger === logger && sheet.position === position && state !== 'failed',
   );
-  const [only] = there;
-  if (there.length !== 1 || !only) return null;
-  const [rateHz, otherRateHz] = [rateOf(capture), rateOf(only)];
-  return rateHz === null || otherRateHz === null || rateHz === otherRateHz ? null : only;
+  if (there.some((one) => rateOf(one) === null)) return null;
+  const candidates = there.filter((one) => rateOf(one) !== rateHz);
+  return candidates.length === 1 ? (candidates[0] ?? null) : null;
 }
 
 /**
  * Which capture a capture is compared with: the one that its sheet names, in its batch and then in its project; else the
- * other one with its pair label; else, where the sheet says neither, the one recorded by the same logger at the same place at
- * another rate, if there is exactly one. It follows from sheets, names and rates only, never from the outcome of a
+ * other one with its pair label; else, where the sheet says neither, the one recorded by the same logger at the same position
+ * at another rate, if there is exactly one. It follows from sheets, names and rates only, never from the outcome of a
  * comparison, so that asking again after a screening gives the same answer.
  * @param batch captures of the batch; the capture itself may be among them
  * @param elsewhere captures of the same project in other batches

@@ -82,7 +82,7 @@ export const generator: DemoBatch = {
     },
     {
       fileName: 'wrong-rate-on-sheet.wav',
-      acquisition: { position: 'Exhaust', sampleRateHz: 4096 },
+      acquisition: { position: 'Exhaust flange', sampleRateHz: 4096 },
       make: (random) => encodeWav([loadTest(random)], sampleRateHz),
     },
     {

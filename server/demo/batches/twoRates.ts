@@ -1,9 +1,9 @@
 import type { DemoBatch, DemoCapture } from '../DemoBatch.js';
-import { sum } from '../signals/alter.js';
+import { dropSamples, sum } from '../signals/alter.js';
 import { encodeWav } from '../signals/encodeWav.js';
 import { machineSignal } from '../signals/machine.js';
 import { filteredNoise, whiteNoise } from '../signals/noise.js';
-import type { SeededRandom } from '../signals/SeededRandom.js';
+import { SeededRandom } from '../signals/SeededRandom.js';
 
 const durationS = 12;
 
@@ -12,28 +12,35 @@ interface Source {
   amplitude: number;
 }
 
-/** The same event at one of two rates: what lies above half the lower one moves between them. */
-function atRate(sampleRateHz: number, sources: readonly Source[], random: SeededRandom): Float64Array {
-  const frames = sampleRateHz * durationS;
+interface Event {
+  seed: number;
+  /** A multiple of both rates. */
+  eventRateHz: number;
+  sources: readonly Source[];
+}
+
+/** What happens at the machine, the same for both loggers: its lines, and a rumble that dies away below either fs/2. */
+function makeEvent({ seed, eventRateHz, sources }: Event): Float64Array {
+  const random = new SeededRandom(seed);
   const orders = sources.map(({ frequencyHz, amplitude }) => ({ order: frequencyHz, amplitude }));
   return sum(
-    machineSignal({ sampleRateHz, durationS, speedHz: 1, orders }, random),
-    filteredNoise(frames, 0.02, 0.3, random),
-    whiteNoise(frames, 1e-4, random),
+    machineSignal({ sampleRateHz: eventRateHz, durationS, speedHz: 1, orders }, random),
+    filteredNoise(eventRateHz * durationS, 0.02, 150 / eventRateHz, random),
   );
 }
 
-function pair(
-  name: string,
-  position: string,
-  rates: readonly [number, number],
-  sources: readonly Source[],
-): DemoCapture[] {
+/** The event as a logger without a filter takes it: what lies above half the lower rate moves between the two. */
+function atRate(sampleRateHz: number, event: Event, random: SeededRandom): Float64Array {
+  const taken = dropSamples(makeEvent(event), event.eventRateHz / sampleRateHz);
+  return sum(taken, whiteNoise(taken.length, 1e-4, random));
+}
+
+function pair(name: string, position: string, rates: readonly [number, number], event: Event): DemoCapture[] {
   const fileOf = (rateHz: number): string => `${name}/at-${rateHz}-hz.wav`;
   return rates.map((sampleRateHz, index) => ({
     fileName: fileOf(sampleRateHz),
     acquisition: { sampleRateHz, position, pair: name, companion: fileOf(rates[1 - index] ?? sampleRateHz) },
-    make: (random) => encodeWav([atRate(sampleRateHz, sources, random)], sampleRateHz),
+    make: (random) => encodeWav([atRate(sampleRateHz, event, random)], sampleRateHz),
   }));
 }
 
@@ -44,34 +51,31 @@ export const twoRates: DemoBatch = {
   isComplete: true,
   acquisition: { highestFrequencyHz: 400, filter: { type: 'none' }, logger: 'Logger K2' },
   captures: [
-    ...pair(
-      'gearbox-a',
-      'Gearbox A, output shaft',
-      [1000, 1280],
-      [
+    ...pair('gearbox-a', 'Gearbox A, output shaft', [1000, 1280], {
+      seed: 1031,
+      eventRateHz: 32_000,
+      sources: [
         { frequencyHz: 118.4, amplitude: 0.2 },
         { frequencyHz: 236.8, amplitude: 0.1 },
         { frequencyHz: 734.2, amplitude: 0.12 },
       ],
-    ),
-    ...pair(
-      'gearbox-b',
-      'Gearbox B, output shaft',
-      [1000, 1280],
-      [
+    }),
+    ...pair('gearbox-b', 'Gearbox B, output shaft', [1000, 1280], {
+      seed: 1032,
+      eventRateHz: 32_000,
+      sources: [
         { frequencyHz: 97.1, amplitude: 0.2 },
         { frequencyHz: 194.2, amplitude: 0.1 },
         { frequencyHz: 291.3, amplitude: 0.05 },
       ],
-    ),
-    ...pair(
-      'gearbox-c',
-      'Gearbox C, input shaft',
-      [1024, 1600],
-      [
+    }),
+    ...pair('gearbox-c', 'Gearbox C, input shaft', [1024, 1600], {
+      seed: 1033,
+      eventRateHz: 25_600,
+      sources: [
         { frequencyHz: 143.7, amplitude: 0.15 },
-        { frequencyHz: 881.3, amplitude: 0.15 },
+        { frequencyHz: 862.4, amplitude: 0.15 },
       ],
-    ),
+    }),
   ],
 };

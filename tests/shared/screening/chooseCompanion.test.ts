@@ -88,11 +88,23 @@ describe('a pair label', () => {
     expect(idOf(both, [both, capture('c.wav', { pair: 'A' })])).toBe('c.wav');
   });
 
-  it('on no other capture, or on several, is said and finds none', () => {
+  it('on no other capture is said and finds none', () => {
+    expect(choose(labelled, [labelled])).toMatchObject({ companion: null });
     expect(choose(labelled, [labelled]).note).toContain('No other capture of the batch carries the pair label A');
-    const three = [labelled, capture('b.wav', { pair: 'A' }), capture('c.wav', { pair: 'A' })];
-    expect(choose(labelled, three)).toMatchObject({ companion: null });
-    expect(choose(labelled, three).note).toContain('2 other captures');
+  });
+
+  it('on several finds the fastest that did not fail, once all rates are known', () => {
+    const at = (fileName: string, sampleRateHz: number | null, rest: Partial<PairableCapture> = {}) =>
+      capture(fileName, { pair: 'A' }, { sampleRateHz, ...rest });
+    const [medium, quick] = [at('b.wav', 1280), at('c.wav', 6400)];
+    expect(idOf(labelled, [labelled, medium, quick])).toBe('c.wav');
+    expect(idOf(labelled, [labelled, quick, medium])).toBe('c.wav');
+    expect(idOf(labelled, [labelled, medium, at('c.wav', 6400, { state: 'failed' })])).toBe('b.wav');
+    expect(choose(labelled, [labelled, medium, at('c.wav', null)]).note).toContain('2 other captures carry');
+  });
+
+  it('on a failed capture alone finds it, so that its failure can be said', () => {
+    expect(idOf(labelled, [labelled, capture('b.wav', { pair: 'A' }, { state: 'failed' })])).toBe('b.wav');
   });
 });
 
@@ -107,6 +119,11 @@ describe('the same logger and position', () => {
     expect(idOf(second, [first, second])).toBe('a.wav');
   });
 
+  it('passes over those of the same rate', () => {
+    const first = at('a.wav', 1000);
+    expect(idOf(first, [first, at('b.wav', 1000), at('c.wav', 1280)])).toBe('c.wav');
+  });
+
   it('takes a declared rate before a found one', () => {
     const first = at('a.wav', 1000);
     expect(idOf(first, [first, at('b.wav', 1280, { sheet: { ...place, sampleRateHz: 1000 } })])).toBeUndefined();
@@ -116,7 +133,8 @@ describe('the same logger and position', () => {
   it.each([
     ['the rate is the same', [at('b.wav', 1000)]],
     ['the rate is not known yet', [at('b.wav', null)]],
-    ['there is a third capture', [at('b.wav', 1280), at('c.wav', null)]],
+    ['the rate of a third is not known yet', [at('b.wav', 1280), at('c.wav', null)]],
+    ['two have another rate', [at('b.wav', 1280), at('c.wav', 1600)]],
     ['the other one failed', [at('b.wav', 1280, { state: 'failed' })]],
   ])('finds none, and asks for nothing, where %s', (_case, others) => {
     const first = at('a.wav', 1000);

@@ -323,10 +323,12 @@ describe('the demo’s pairs', () => {
     expect(results).toHaveLength(twoRates.captures.length);
     expect(results.filter(({ measurement }) => measurement.companion === null)).toEqual([]);
     const moved = results.filter(({ screen }) => showsMove(screen));
-    expect(moved.map(({ capture }) => capture.fileName)).toEqual(
-      expect.arrayContaining(['gearbox-a/at-1000-hz.wav', 'gearbox-a/at-1280-hz.wav', 'gearbox-c/at-1024-hz.wav']),
-    );
-    expect(moved.filter(({ capture }) => capture.fileName.startsWith('gearbox-b'))).toEqual([]);
+    expect(moved.map(({ capture }) => capture.fileName).sort()).toEqual([
+      'gearbox-a/at-1000-hz.wav',
+      'gearbox-a/at-1280-hz.wav',
+      'gearbox-c/at-1024-hz.wav',
+      'gearbox-c/at-1600-hz.wav',
+    ]);
     const states = await app.deps.dataSource.manager.findBy(Batch, { name: twoRates.name });
     expect(states.map(({ state }) => state)).toEqual(['review']);
   });
