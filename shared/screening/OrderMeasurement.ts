@@ -24,7 +24,7 @@ export interface OrderLawMeasurement {
   inBandLines: { frequencyHz: number; standsOutDb: number }[];
   /** Places looked at beyond fs/2. */
   linesTried: number;
-  /** Highest line beyond fs/2 under the reversed law, which nothing follows. */
+  /** Highest line beyond fs/2 under the opposite law (deviations turned round), which nothing follows. */
   chanceStandsOutDb: number;
   /** Lines seen where they lie beyond fs/2; strongest first. */
   lines: FoldedOrderMeasurement[];

@@ -14,6 +14,8 @@ const leastApartBins = 3;
 const rangeOverSpread = Math.sqrt(12);
 /** The same line has to be seen below fs/2 when nothing else follows the law. */
 const leastInBandDb = 12;
+/** The background of a real capture has a heavier tail than noise of the same mean. */
+const leastUnit = 1.5;
 const candidatesListed = 4;
 /** Below the total power by the protection and this much more, a folded order is no reason to call a capture folded. */
 const immaterialBelowDb = 25;
@@ -81,8 +83,8 @@ function judgeLaw(
   highestHz: number,
 ): Omit<JudgedLine, 'isMaterial'>[] {
   const tried = Math.log(Math.max(2, law.linesTried));
-  // Where even the reversed law shows lines higher than noise makes them, all are measured against those.
-  const unit = Math.max(1, 10 ** (law.chanceStandsOutDb / 10) / tried);
+  // Where even the opposite law shows lines higher than noise makes them, all are measured against those.
+  const unit = Math.max(leastUnit, 10 ** (law.chanceStandsOutDb / 10) / tried);
   return law.lines
     .filter(({ apartBins }) => apartBins >= leastApartBins)
     .filter(({ inBandStandsOutDb }) => law.inBandLines.length > 0 || (inBandStandsOutDb ?? 0) > leastInBandDb)
@@ -154,7 +156,7 @@ function lawFinding(law: OrderLawMeasurement, shown: JudgedLine[], sampleRateHz:
       chanceProbability: tone.chanceProbability ?? 1,
       sampleRateHz,
     },
-    method: 'non-uniform transform over the shaft angle; lines beyond fs/2 against the background and the reversed law',
+    method: 'non-uniform transform over the shaft angle; lines beyond fs/2 against the background and the opposite law',
     source: 'Blough 2003; Dutt & Rokhlin 1993; Oberlin, Meignen & Perrier 2015',
   };
 }

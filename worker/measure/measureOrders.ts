@@ -1,13 +1,19 @@
-import type { OrderLawMeasurement, OrderMeasurement } from '../../shared/screening/OrderMeasurement.js';
+import type {
+  FoldedOrderMeasurement,
+  OrderLawMeasurement,
+  OrderMeasurement,
+} from '../../shared/screening/OrderMeasurement.js';
 import { chirpVotes } from '../dsp/warp/chirpVotes.js';
 import { decibels } from '../dsp/decibels.js';
 import { findLaws, type FoundLaw } from '../dsp/warp/findLaws.js';
 import { flattenSpectrum, type FlatSignal } from '../dsp/warp/flattenSpectrum.js';
 import { type FoldedLine, foldedLines } from '../dsp/warp/foldedLines.js';
 import { isSameRidge } from '../dsp/warp/isSameRidge.js';
-import { reversedLaw, type SpeedLaw } from '../dsp/warp/SpeedLaw.js';
+import { removeInBandLines } from '../dsp/warp/removeInBandLines.js';
+import { oppositeLaw, type SpeedLaw } from '../dsp/warp/SpeedLaw.js';
 import { taperEnds } from '../dsp/warp/taperEnds.js';
 import { type TransformOf, transformsBySize } from '../dsp/warp/transformsBySize.js';
+import type { WarpedTransform } from '../dsp/warp/WarpedTransform.js';
 import { binPowers, warpedLines } from '../dsp/warp/warpedLines.js';
 
 export interface OrderOptions {
@@ -26,13 +32,16 @@ const mostLinesKept = 32;
 /** A line enters the record from here; whether it counts is the judge's to say. */
 const leastKeptRatio = 10;
 const inBandRatio = 10;
-/** Near a multiple of fs/2 a folded order follows the reversed law for a while: such lines are no measure of chance. */
+const clearLeadDb = 3;
+/** Where the speed is read; the very ends, where samples fade, are left out. */
+const speedShares = Array.from({ length: 37 }, (_, i) => (i + 2) / 40);
+/** Near a multiple of fs/2 a folded order follows the opposite law for a while: such lines are no measure of chance. */
 const alikeBins = 12;
 
 /**
  * Orders beyond fs/2 in one stretch of a channel: the relative speed law is found blind from the slopes of all lines, the
  * stretch is transformed in warped time, where everything that turns with it is a steady line at its true frequency, and
- * the lines beyond fs/2 are measured where they are folded. The reversed law gives the height that no folding explains.
+ * the lines beyond fs/2 are measured where they are folded. The opposite law gives the height that no folding explains.
  * @returns null where the stretch is too short
  */
 export function measureOrders(samples: Float64Array, options: OrderOptions): OrderMeasurement | null {
@@ -70,17 +79,16 @@ function measureLaw(
   const durationS = length / sampleRateHz;
   const count = Math.ceil((highestHz / sampleRateHz) * length) + 64;
   const transform = transformOf(count);
-  const spectrum = transform.forward(law.warped, tapered);
-  const speeds = [0, 0.25, 0.5, 0.75, 1].map(law.speedAt);
-  const fastest = Math.max(...speeds);
-  const inBand = warpedLines(binPowers(spectrum), 3, Math.floor(length / 2 / fastest), inBandRatio);
-  const lines = foldedLines(spectrum, law).filter(({ ratio }) => ratio > leastKeptRatio);
-  const chanceRatio =
-    lines.length === 0 ? 0 : highestByChance(transform.forward(reversedLaw(law).warped, tapered), law);
+  const speeds = speedShares.map(law.speedAt);
+  const inBandCount = Math.floor(length / 2 / Math.max(...speeds));
+  const inBand = warpedLines(binPowers(transformOf(count).forward(law.warped, tapered)), 3, inBandCount, inBandRatio);
+  const rest = removeInBandLines(tapered, law, transformOf);
+  const lines = foldedLines(transform.forward(law.warped, rest), law).filter(({ ratio }) => ratio > leastKeptRatio);
+  const chanceRatio = lines.length === 0 ? 0 : highestByChance(rest, oppositeLaw(law), transform);
   return {
     mode: 'blind',
-    speedFrom: law.speedAt(0),
-    speedTo: law.speedAt(1),
+    speedFrom: speeds[0] as number,
+    speedTo: speeds[speeds.length - 1] as number,
     speedChange: Math.max(...speeds) - Math.min(...speeds),
     sharpness,
     steadySharpness,
@@ -109,11 +117,10 @@ function measureLaw(
 }
 
 /** The highest line beyond fs/2 under a law that nothing in the stretch follows. */
-function highestByChance(spectrum: Float64Array, law: FoundLaw['law']): number {
-  const reversed = reversedLaw(law);
+function highestByChance(samples: Float64Array, law: SpeedLaw, transform: WarpedTransform): number {
   const isOther = (line: FoldedLine): boolean =>
     Math.abs(2 * line.nu - Math.round(2 * line.nu)) * line.apartBins > alikeBins;
-  return foldedLines(spectrum, reversed).filter(isOther)[0]?.ratio ?? 0;
+  return foldedLines(transform.forward(law.warped, samples), law).filter(isOther)[0]?.ratio ?? 0;
 }
 
 interface MeasuredLaw {
@@ -123,25 +130,20 @@ interface MeasuredLaw {
 
 /**
  * One ridge can follow two laws, each folded where the other is in band: a sweep up through fs/2, or one down from beyond.
- * The reading with the shorter folded part is kept.
+ * The reading in which it stands out more is kept, of equals the one with the shorter folded part.
  */
 function dropSameRidges(laws: MeasuredLaw[], sampleRateHz: number): OrderLawMeasurement[] {
-  return laws.map(({ law, measured }) => ({
-    ...measured,
-    lines: measured.lines.filter(
-      (line) =>
-        !laws.some(
-          (other) =>
-            other.law !== law &&
-            other.measured.lines.some(
-              (twin) =>
-                twin.foldedShare < line.foldedShare &&
-                isSameRidge(
-                  { law, nu: line.meanFrequencyHz / sampleRateHz },
-                  { law: other.law, nu: twin.meanFrequencyHz / sampleRateHz },
-                ),
-            ),
-        ),
-    ),
-  }));
+  const ridges = laws.flatMap(({ law, measured }) =>
+    measured.lines.map((line) => ({ law, line, nu: line.meanFrequencyHz / sampleRateHz })),
+  );
+  const dropped = new Set<FoldedOrderMeasurement>();
+  for (const one of ridges) {
+    for (const other of ridges) {
+      if (one.law === other.law || dropped.has(other.line) || !isSameRidge(one, other)) continue;
+      const lead = other.line.standsOutDb - one.line.standsOutDb;
+      const isShorter = other.line.foldedShare < one.line.foldedShare;
+      if (lead > clearLeadDb || (lead > -clearLeadDb && isShorter)) dropped.add(one.line);
+    }
+  }
+  return laws.map(({ measured }) => ({ ...measured, lines: measured.lines.filter((line) => !dropped.has(line)) }));
 }

@@ -1,3 +1,4 @@
+import FFT from 'fft.js';
 import { createRealFft, type RealFft } from '../createRealFft.js';
 
 /** Grid points over which a sample is spread; with twofold oversampling the relative error is about 1e-5. */
@@ -61,6 +62,34 @@ export class WarpedTransform {
       result[2 * k + 1] = (spectrum[2 * k + 1] as number) * gain;
     }
     return result;
+  }
+
+  /** @param coefficients interleaved, as `forward` gives them; @returns one real value a place */
+  backward(places: Float64Array, coefficients: Float64Array): Float64Array {
+    const { size, count, gains } = this;
+    const fft = new FFT(size);
+    const input = new Float64Array(2 * size);
+    for (let k = 0; k < count; k++) {
+      const gain = gains[k] as number;
+      input[2 * k] = (coefficients[2 * k] as number) * gain * size;
+      input[2 * k + 1] = (coefficients[2 * k + 1] as number) * gain * size;
+    }
+    const output = new Float64Array(2 * size);
+    fft.inverseTransform(output, input);
+    const mask = size - 1;
+    return places.map((place) => {
+      const at = (place - Math.floor(place)) * size;
+      const first = Math.ceil(at - half);
+      const exact = (first - at + half) * tableSteps;
+      const entry = Math.floor(exact);
+      const share = exact - entry;
+      let sum = 0;
+      for (let l = 0, e = entry; l < width; l++, e += tableSteps) {
+        const low = table[e] as number;
+        sum += (output[2 * ((first + l) & mask)] as number) * (low + share * ((table[e + 1] as number) - low));
+      }
+      return sum;
+    });
   }
 }
 

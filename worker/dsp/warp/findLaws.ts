@@ -1,5 +1,6 @@
 import type { ChirpVote } from './chirpVotes.js';
 import { type PolishedRate, polishRate } from './polishRate.js';
+import { refineLaw, type Rung } from './refineLaw.js';
 import { sharpness } from './sharpness.js';
 import { linearLaw, type SpeedLaw } from './SpeedLaw.js';
 import type { TransformOf } from './transformsBySize.js';
@@ -22,43 +23,66 @@ const leastLineRatio = 20;
 /** A law has to gather the spectrum this much better than steady speed does, and better than noise can. */
 const leastGain = 1.5;
 const leastSharpness = 3;
+/** Noise alone has 2: without lines there is nothing to climb on. */
+const sharpnessOfLines = 2.3;
+/** So much sharper than steady: no need to look for wander as well. */
+const clearGain = 3;
 /** Lines up to 1.3·fs/2 count: a sweep through fs/2 has its middle there. */
 const countedBand = 0.65;
 const firstBin = 3;
 const inBandRatio = 10;
 
-/** Linear speed laws that gather the energy of the stretch in lines, the one with most support first. */
+/** From a slope that is known, and from steady speed: each rung needs the law as well as the one before leaves it. */
+const upperRungs: Rung[] = [
+  { band: 0.2, judgedBand: countedBand, reach: 32 },
+  { band: 0.5, judgedBand: countedBand, reach: 12 },
+  { band: 0.5, judgedBand: countedBand, reach: 8 },
+];
+const lowerRungs: Rung[] = [
+  { band: 0.03, judgedBand: 0.03, reach: 32 },
+  { band: 0.03, judgedBand: 0.03, reach: 32 },
+  { band: 0.08, judgedBand: 0.08, reach: 32 },
+  { band: 0.2, judgedBand: 0.2, reach: 32 },
+];
+
+/**
+ * Speed laws that gather the energy of the stretch in lines, the sharpest first: linear ones proposed by the slopes of the
+ * spectrum's peaks, and wander about a steady speed; both refined up a ladder of rising frequency.
+ */
 export function findLaws(tapered: Float64Array, votes: ChirpVote[], transformOf: TransformOf): FoundLaw[] {
   const { length } = tapered;
   const count = Math.floor(countedBand * length);
   const sharpnessOf = (law: SpeedLaw): number =>
     sharpness(transformOf(count).forward(law.warped, tapered), firstBin, count);
-  let steady: number | null = null;
+  const steady = linearLaw(0, length);
+  const steadySharpness = sharpnessOf(steady);
+  const least = Math.max(leastSharpness, leastGain * steadySharpness);
   const found: FoundLaw[] = [];
+  const consider = (start: SpeedLaw, rungs: Rung[]): void => {
+    const law = rungs.reduce((reached, rung) => refineLaw(tapered, reached, rung, transformOf), start);
+    if (law === steady || found.some((other) => isSameLaw(other.law, law))) return;
+    const sharp = sharpnessOf(law);
+    if (sharp >= least) found.push({ law, sharpness: sharp, steadySharpness });
+  };
   for (const candidate of voteForRates(votes, length, mostLaws)) {
     if (candidate.score < leastScore || Math.abs(candidate.rho) * length < leastBins) continue;
-    const polished = polishBest(tapered, candidate);
-    if (polished === null) continue;
-    steady ??= sharpnessOf(linearLaw(0, length));
-    const least = Math.max(leastSharpness, leastGain * steady);
-    const first = linearLaw(polished.rho, length);
-    const best = { law: first, sharpness: sharpnessOf(first), steadySharpness: steady };
-    if (best.sharpness < least) continue;
-    const rho = polishHigh(tapered, polished.rho, transformOf);
-    if (rho !== null) {
-      const law = linearLaw(rho, length);
-      const sharp = sharpnessOf(law);
-      if (sharp > best.sharpness) Object.assign(best, { law, sharpness: sharp });
-    }
-    if (!found.some(({ law }) => isSameLaw(law, best.law))) found.push(best);
+    const rho = polishBest(tapered, candidate)?.rho;
+    if (rho === undefined || sharpnessOf(linearLaw(rho, length)) < least) continue;
+    consider(linearLaw(polishHigh(tapered, rho, sharpnessOf, transformOf), length), upperRungs);
   }
-  return found;
+  const isClear = found.some((law) => law.sharpness > clearGain * steadySharpness);
+  if (!isClear && steadySharpness > sharpnessOfLines) consider(steady, [...lowerRungs, ...upperRungs.slice(1)]);
+  return found.sort((a, b) => b.sharpness - a.sharpness).slice(0, mostLaws);
 }
 
-/** Laws that no line below fs/2 tells apart. */
+/** Laws that no line below fs/2 tells apart; the ends, where samples fade, don't count. */
 function isSameLaw(a: SpeedLaw, b: SpeedLaw): boolean {
-  const difference = a.warped.reduce((most, value, n) => Math.max(most, Math.abs(value - (b.warped[n] as number))), 0);
-  return difference * a.length < 2;
+  const skip = Math.floor(0.05 * a.length);
+  let most = 0;
+  for (let n = skip; n < a.length - skip; n++) {
+    most = Math.max(most, Math.abs((a.warped[n] as number) - (b.warped[n] as number)));
+  }
+  return most * a.length < leastBins;
 }
 
 /** Of the lines that support a candidate the one that fixes its slope best. */
@@ -71,12 +95,19 @@ function polishBest(tapered: Float64Array, { rho, reach, lines }: RateCandidate)
 }
 
 /** The slope once more, from the strongest high line that the law gathers below fs/2. */
-function polishHigh(tapered: Float64Array, rho: number, transformOf: TransformOf): number | null {
+function polishHigh(
+  tapered: Float64Array,
+  rho: number,
+  sharpnessOf: (law: SpeedLaw) => number,
+  transformOf: TransformOf,
+): number {
   const { length } = tapered;
   const to = Math.floor(length / 2 / (1 + Math.abs(rho)));
   const spectrum = transformOf(Math.floor(countedBand * length)).forward(linearLaw(rho, length).warped, tapered);
   const lines = warpedLines(binPowers(spectrum), firstBin, to, inBandRatio);
   lines.sort((a, b) => b.power * b.bin ** 2 - a.power * a.bin ** 2);
   const [line] = lines;
-  return line === undefined ? null : polishRate(tapered, rho, line.bin / length, 5e-4).rho;
+  if (line === undefined) return rho;
+  const polished = polishRate(tapered, rho, line.bin / length, 5e-4).rho;
+  return sharpnessOf(linearLaw(polished, length)) > sharpnessOf(linearLaw(rho, length)) ? polished : rho;
 }

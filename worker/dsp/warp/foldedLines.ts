@@ -32,6 +32,8 @@ const places = [-0.75, -0.5, -0.25, 0, 0.25, 0.5, 0.75];
 /** Bins left free around each multiple of fs/2, where a path and its reflection can't be told apart. */
 const guardBins = 6;
 const leastPoints = 6;
+/** Points at each end where the samples fade and the law is least sure. */
+const endPoints = 2;
 
 /** @param spectrum of the tapered samples in warped time, bin k at k cycles a stretch, up to the highest order looked for */
 export function foldedLines(spectrum: Float64Array, law: SpeedLaw): FoldedLine[] {
@@ -54,6 +56,7 @@ function judgeParts(line: WarpedLine, spectrum: Float64Array, speeds: Float64Arr
   const folded = new Uint8Array(envelopePoints);
   const inBand = new Uint8Array(envelopePoints);
   speeds.forEach((speed, j) => {
+    if (j < endPoints || j >= envelopePoints - endPoints) return;
     const frequency = (turns * speed) / length;
     const toFold = Math.abs(2 * frequency - Math.round(2 * frequency)) / 2;
     // A crossing is over when the path has left the fold by more than it moves during one point.

@@ -8,16 +8,17 @@ const fft = new FFT(envelopePoints);
 /**
  * How a line's amplitude and phase go over warped time: the bins around it, with a raised-cosine weight, transformed back.
  * Point j belongs to warped shares around (j + ½)/points: its real part sums the samples there, turned back by the line.
+ * @param reach bins on each side, at most half the points
  * @returns interleaved; the sum over all points is the line's bin
  */
-export function lineEnvelope(spectrum: Float64Array, bin: number): Float64Array {
+export function lineEnvelope(spectrum: Float64Array, bin: number, reach = half): Float64Array {
   const input = new Float64Array(2 * envelopePoints);
-  for (let m = -half + 1; m < half; m++) {
+  for (let m = -reach + 1; m < reach; m++) {
     const k = bin + m;
     const mirrored = k < 0;
     const place = 2 * Math.abs(k);
     if (place + 1 >= spectrum.length) continue;
-    const weight = Math.cos((Math.PI * m) / envelopePoints) ** 2;
+    const weight = Math.cos((Math.PI * m) / (2 * reach)) ** 2;
     const turn = (Math.PI * m) / envelopePoints;
     const re = (spectrum[place] as number) * weight;
     const im = (spectrum[place + 1] as number) * (mirrored ? -1 : 1) * weight;

@@ -1,6 +1,6 @@
-const share = 0.1;
+const share = 0.05;
 
-/** A copy whose first and last tenth rise and fall as half a cosine (Tukey 1967), so that strong lines leak little. */
+/** A copy whose first and last twentieth rise and fall as half a cosine (Tukey 1967), so that strong lines leak little. */
 export function taperEnds(samples: Float64Array): Float64Array {
   const edge = Math.max(1, share * samples.length);
   return samples.map((value, n) => {
