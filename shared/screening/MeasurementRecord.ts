@@ -31,8 +31,21 @@ export interface MeasurementRecord {
   tones: ToneMeasurement[];
   irregular: IrregularMeasurement | null;
   companion: CompanionMeasurement | null;
+  /** Missing in records of older engines. */
+  bispectrum?: BispectrumMeasurement | null;
   /** Orders and sweeps by stretch; missing in older records, null where the channel is too short, irregular or silent. */
   orders?: OrderMeasurement[] | null;
+}
+
+/** Bispectral test: triples of frequencies that add up within the band (inner) or only by way of fs (outer). */
+export interface BispectrumMeasurement {
+  /** Why it was not run; null where it was. */
+  notRun: 'tooShort' | 'damaged' | 'coarse' | 'transient' | 'tonal' | 'moreChannels' | null;
+  blocks: number;
+  outer: { statistic: number; cells: number; chance: number } | null;
+  inner: { statistic: number; cells: number; chance: number } | null;
+  /** Chance that stationary noise changes as much over the capture. */
+  stationaryChance: number | null;
 }
 
 export type MeasurementObstacle = 'rateUnknown' | 'tooFewSamples' | 'silent' | 'notFinite' | 'irregularStamps';
@@ -190,6 +203,26 @@ export interface IrregularMeasurement {
   reachHz: number;
   limitedBy: 'grid' | 'stampError' | 'sensorBand' | 'budget';
   tones: IrregularTone[];
+  /** Power of the samples about their mean, dB. Missing in older records, like all that follows. */
+  totalDb?: number;
+  /** Law of the highest peak, over its surroundings, when the samples are dealt out to the times at random. */
+  falseAlarm?: { shuffles: number; location: number; scale: number };
+  /** What lies beyond half the mean rate beside the tones; null where the stamps can't tell. */
+  beyond?: BeyondHalfMeasurement | null;
+}
+
+/** Powers of what the tones leave, as shares of the whole power, dB. */
+export interface BeyondHalfMeasurement {
+  /** The share reaches from half the mean rate to here. */
+  toHz: number;
+  /** Beyond half the mean rate, above what is the same at all frequencies. */
+  beyondDb: number;
+  /** Its standard error, as a share of the whole power, dB. */
+  errorDb: number;
+  /** The same density everywhere: noise of the converter, or a signal that can't be told from it. */
+  flatDb: number;
+  /** Natural logarithm of how much likelier held-out stretches are with content beyond half the mean rate than without. */
+  heldOutLogRatio: number;
 }
 
 export interface IrregularTone {
@@ -201,6 +234,10 @@ export interface IrregularTone {
   logFalseAlarm: number;
   /** How much the held-out samples' residual falls by this tone, dB. */
   heldOutGainDb: number;
+  /** The best other frequency in this tone's place; null where there is none. Missing in older records. */
+  rivalHz?: number | null;
+  /** Natural logarithm of how much likelier the samples are with the tone than with its rival. */
+  rivalLogRatio?: number | null;
 }
 
 export interface CompanionMeasurement {

@@ -5,6 +5,7 @@ import { decideVerdict } from './decideVerdict.js';
 import { type FoldEvidence, isFoldedTone, joinEvidence } from './FoldEvidence.js';
 import { foldFeatures } from './foldFeatures.js';
 import { foldPrior, foldScore } from './foldScore.js';
+import { judgeBispectrum } from './judgeBispectrum.js';
 import { judgeCompanion } from './judgeCompanion.js';
 import { bandEdgeFigures, judgeEdge } from './judgeEdge.js';
 import { judgeIntegrity } from './judgeIntegrity.js';
@@ -74,7 +75,12 @@ function gatherEvidence(record: MeasurementRecord, thresholds: Thresholds, sheet
   if (record.irregular !== null) return judgeIrregular(record.irregular, thresholds);
   const binHz = record.durationS === null || record.durationS === 0 ? 0 : 1 / record.durationS;
   return joinEvidence(
-    [judgeTones(record, thresholds, sheet), judgeOrders(record, thresholds, sheet), judgeCompanion(record, thresholds)],
+    [
+      judgeTones(record, thresholds, sheet),
+      judgeOrders(record, thresholds, sheet),
+      judgeCompanion(record, thresholds),
+      judgeBispectrum(record, thresholds),
+    ],
     binHz,
   );
 }

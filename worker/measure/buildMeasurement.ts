@@ -1,4 +1,5 @@
 import type {
+  BispectrumMeasurement,
   IntegrityMeasurement,
   IrregularMeasurement,
   MeasurementObstacle,
@@ -25,6 +26,7 @@ export interface ChannelParts {
   irregular: IrregularMeasurement | null;
   raised: RaisedRate | null;
   orders: OrderMeasurement[] | null;
+  bispectrum: BispectrumMeasurement | null;
   damageLeftOut: boolean;
 }
 
@@ -94,6 +96,7 @@ export function buildMeasurement(source: SampleSource, parts: ChannelParts, chan
       irregular: isSilent ? null : parts.irregular,
       companion: null,
       orders: hasSpectra ? parts.orders : null,
+      bispectrum: parts.bispectrum,
     },
     spectra: spectraKept,
   };

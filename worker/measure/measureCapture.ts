@@ -1,13 +1,13 @@
 import type { AcquisitionSheet } from '../../shared/schemas/acquisitionSheet.js';
-import type { IrregularMeasurement } from '../../shared/screening/MeasurementRecord.js';
 import type { SampleSource } from '../readers/SampleSource.js';
 import { RaisedRateMeter } from '../dsp/RaisedRateMeter.js';
+import { addBispectra } from './addBispectra.js';
 import { addOrders } from './addOrders.js';
 import { addTones } from './addTones.js';
 import { buildMeasurement, type ChannelParts } from './buildMeasurement.js';
 import type { ChannelMeasurement } from './ChannelMeasurement.js';
 import { type FrameSpan, holdLastFinite, IntegrityMeter } from './IntegrityMeter.js';
-import { measureIrregular } from './measureIrregular.js';
+import { createIrregularMeter } from './measureIrregular.js';
 import type { Pass } from './Pass.js';
 import { leastSamples, planSegments } from './planSegments.js';
 import { SpectrumMeter } from './SpectrumMeter.js';
@@ -43,6 +43,7 @@ export function measureCapture(
     irregular: null,
     raised: null,
     orders: null,
+    bispectrum: null,
     damageLeftOut: false,
   }));
   const rateHz = source.sampleRateHz;
@@ -52,6 +53,7 @@ export function measureCapture(
     else {
       addSpectra(source, rateHz, parts, pass);
       addOrders(source, sheet, rateHz, parts, pass);
+      addBispectra(source, parts, pass);
     }
   }
   options.onProgress?.(1);
@@ -127,11 +129,9 @@ function addIrregular(source: SampleSource, sheet: AcquisitionSheet, parts: Chan
   pass(1, (channels, frames, first) =>
     values.forEach((target, c) => target.set(holdLastFinite(channels[c] as Float64Array, frames), first)),
   );
-  parts.forEach((part, c) => {
-    const measured: IrregularMeasurement = measureIrregular(timesS, values[c] as Float64Array, {
-      roundingStepS: source.timeStamps?.roundingStepS ?? 0,
-      sensorBandHz: sheet.sensorBandHz ?? null,
-    });
-    part.irregular = measured;
+  const measure = createIrregularMeter(timesS, {
+    roundingStepS: source.timeStamps?.roundingStepS ?? 0,
+    sensorBandHz: sheet.sensorBandHz ?? null,
   });
+  parts.forEach((part, c) => (part.irregular = measure(values[c] as Float64Array)));
 }

@@ -10,6 +10,7 @@ export interface ChirpVote {
   slope: number;
   /** Standard error of the slope. */
   slopeError: number;
+  frameLength: number;
   /** Frame length and octave: votes of one cell are as good as each other. */
   cell: number;
   /** Spread of the slope of a peak of plain noise. */
@@ -57,6 +58,7 @@ export function chirpVotes(samples: Float64Array, length: number): ChirpVote[] {
         at: first + half,
         ...read,
         cell,
+        frameLength: length,
         slopeError: Math.sqrt(30 / ratio + 0.01) * unit,
         noiseSpread: unit,
       });

@@ -1,4 +1,5 @@
 import type { ChirpVote } from './chirpVotes.js';
+import { lawFromVotes } from './lawFromVotes.js';
 import { type PolishedRate, polishRate } from './polishRate.js';
 import { refineLaw, type Rung } from './refineLaw.js';
 import { sharpness } from './sharpness.js';
@@ -18,6 +19,8 @@ const mostLaws = 2;
 const leastScore = 10;
 /** Below three bins of change across fs a law can't be told from a steady one. */
 const leastBins = 3;
+/** Log-likelihood ratio from which a law of free shape is worth refining. */
+const leastGainOfPath = 30;
 const leastReach = 0.003;
 const leastLineRatio = 20;
 /** A law has to gather the spectrum this much better than steady speed does, and better than noise can. */
@@ -45,9 +48,11 @@ const lowerRungs: Rung[] = [
   { band: 0.2, judgedBand: 0.2, reach: 32 },
 ];
 
+const ladder = [...lowerRungs, ...upperRungs.slice(1)];
+
 /**
  * Speed laws that gather the energy of the stretch in lines, the sharpest first: linear ones proposed by the slopes of the
- * spectrum's peaks, and wander about a steady speed; both refined up a ladder of rising frequency.
+ * spectrum's peaks, wander about a steady speed, and laws of free shape from the slopes moment by moment; all refined up a ladder of rising frequency.
  */
 export function findLaws(tapered: Float64Array, votes: ChirpVote[], transformOf: TransformOf): FoundLaw[] {
   const { length } = tapered;
@@ -70,8 +75,12 @@ export function findLaws(tapered: Float64Array, votes: ChirpVote[], transformOf:
     if (rho === undefined || sharpnessOf(linearLaw(rho, length)) < least) continue;
     consider(linearLaw(polishHigh(tapered, rho, sharpnessOf, transformOf), length), upperRungs);
   }
-  const isClear = found.some((law) => law.sharpness > clearGain * steadySharpness);
-  if (!isClear && steadySharpness > sharpnessOfLines) consider(steady, [...lowerRungs, ...upperRungs.slice(1)]);
+  const isClear = (): boolean => found.some((law) => law.sharpness > clearGain * steadySharpness);
+  if (!isClear() && steadySharpness > sharpnessOfLines) consider(steady, ladder);
+  if (!isClear()) {
+    const voted = lawFromVotes(votes, length);
+    if (voted.gain > leastGainOfPath) consider(voted.law, ladder);
+  }
   return found.sort((a, b) => b.sharpness - a.sharpness).slice(0, mostLaws);
 }
 

@@ -1,0 +1,131 @@
+import type { IrregularTone } from '../../shared/screening/MeasurementRecord.js';
+import { decibels } from '../dsp/decibels.js';
+import { createLombScargle } from '../dsp/lombScargle.js';
+import { localFloor, strongestAboveFloor } from '../dsp/localFloor.js';
+import { type ExtremeValueLaw, logChanceOfPeak, shuffledMaxima } from '../dsp/shuffledMaxima.js';
+import { type SinusoidFit, sinusoidFit, sinusoidModel } from '../dsp/sinusoidFit.js';
+import type { IrregularSearch } from './irregularReach.js';
+
+export interface PursuedTones {
+  tones: IrregularTone[];
+  falseAlarm: ExtremeValueLaw;
+  /** What the tones leave of all values. */
+  residual: Float64Array;
+}
+
+const mostTones = 16;
+const leastLogChance = Math.log(1e-3);
+/** A tone found once more within this many 1/span of a stronger one is that one's unsteadiness. */
+const sameToneWidths = 3;
+
+/**
+ * Prepares the pursuit for stamps shared by all channels. Times count from the middle of the capture.
+ * Orthogonal matching pursuit (Tropp & Gilbert 2007) on four fifths of the samples: the peak that stands highest above its
+ * surroundings joins, all frequencies and amplitudes are refined together, until a peak is no rarer than noise would give or no longer
+ * lowers the residual of the fifth that took no part. Each tone is then confirmed on that fifth alone, set against its
+ * rivals (another frequency in its place: the window's own pattern), and refined on all samples.
+ */
+export function createTonePursuit(timesS: Float64Array, search: IrregularSearch): (values: Float64Array) => PursuedTones {
+  const fitted = part(timesS, false);
+  const periodogram = createLombScargle(fitted, search.stepHz, search.count);
+  const polishing = { steps: 1, mostShiftHz: 0.25 / search.spanS };
+  return (values) => {
+    const found = pursue(values);
+    const law = shuffledMaxima(found.residual, periodogram, search.count > 2 ** 14 ? 8 : 16);
+    const all = sinusoidFit(timesS, values, found.frequenciesHz, { steps: 4, mostShiftHz: polishing.mostShiftHz });
+    const tones = describe(found, all, values, law);
+    return { tones, falseAlarm: law, residual: all.residual };
+  };
+
+  function pursue(values: Float64Array): SinusoidFit & { ratios: number[] } {
+    const [fitValues, heldValues, heldTimes] = [part(values, false), part(values, true), part(timesS, true)];
+    const ratios: number[] = [];
+    let fit = sinusoidFit(fitted, fitValues, []);
+    let held = meanSquare(less(heldValues, sinusoidModel(heldTimes, fit)));
+    while (ratios.length < mostTones) {
+      const leastRatio = Math.log(Math.max(1, search.reachHz * search.spanS)) - leastLogChance;
+      const peak = strongestAboveFloor(periodogram(fit.residual), leastRatio);
+      if (peak === null) break;
+      const startHz = sinusoidFit(fitted, fit.residual, [(peak.index + 1) * search.stepHz], {
+        steps: 2,
+        mostShiftHz: search.stepHz,
+      }).frequenciesHz;
+      const next = sinusoidFit(fitted, fitValues, [...fit.frequenciesHz, ...startHz], polishing);
+      const nextHeld = meanSquare(less(heldValues, sinusoidModel(heldTimes, next)));
+      if (!(nextHeld < held)) break;
+      [fit, held] = [next, nextHeld];
+      ratios.push(peak.ratio);
+    }
+    return { ...fit, ratios };
+  }
+
+  function describe(
+    found: SinusoidFit & { ratios: number[] },
+    all: SinusoidFit,
+    values: Float64Array,
+    law: ExtremeValueLaw,
+  ): IrregularTone[] {
+    const floor = localFloor(periodogram(found.residual));
+    const heldTimes = part(timesS, true);
+    const heldResidual = less(part(values, true), sinusoidModel(heldTimes, found));
+    const noise = meanSquare(all.residual);
+    const powers = all.frequenciesHz.map(
+      (_, index) => ((all.cosines[index] as number) ** 2 + (all.sines[index] as number) ** 2) / 2,
+    );
+    return all.frequenciesHz.flatMap((frequencyHz, index) => {
+      const tonePower = powers[index] as number;
+      const isPartOfAnother = all.frequenciesHz.some(
+        (other, o) => Math.abs(other - frequencyHz) * search.spanS < sameToneWidths && (powers[o] as number) > tonePower,
+      );
+      const tone = sinusoidModel(heldTimes, found, index);
+      const without = heldResidual.map((value, n) => value + (tone[n] as number));
+      const heldOutGainDb = decibels(meanSquare(without) / Math.max(meanSquare(heldResidual), 1e-300));
+      const place = Math.min(floor.length - 1, Math.max(0, Math.round(frequencyHz / search.stepHz) - 1));
+      // Share of the residual that a frequency takes by chance, against 2/(N − 1) for white noise: the noise as met there.
+      const colour = ((floor[place] as number) * (fitted.length - 1)) / 2;
+      const ratio = found.ratios[index] as number;
+      if (isPartOfAnother || !(heldOutGainDb > 0) || !(frequencyHz > 0)) return [];
+      return {
+        frequencyHz,
+        uncertaintyHz: (all.spreadHz[index] as number) * Math.sqrt(noise * Math.max(0.1, colour)),
+        levelDb: decibels(tonePower),
+        standsOutDb: decibels(ratio),
+        logFalseAlarm: Math.max(-1e6, logChanceOfPeak(ratio, law)),
+        heldOutGainDb,
+        ...rivalOf(found, index),
+      };
+    });
+  }
+
+  /** The best other frequency in the tone's place, and how much less likely it makes the samples (natural logarithm). */
+  function rivalOf(found: SinusoidFit, index: number): Pick<IrregularTone, 'rivalHz' | 'rivalLogRatio'> {
+    const tone = sinusoidModel(fitted, found, index);
+    const target = found.residual.map((value, n) => value + (tone[n] as number));
+    const power = periodogram(target);
+    const frequencyHz = found.frequenciesHz[index] as number;
+    let top = -1;
+    for (let k = 0; k < power.length; k++) {
+      if (Math.abs((k + 1) * search.stepHz - frequencyHz) * search.spanS < sameToneWidths) continue;
+      if (top < 0 || (power[k] as number) > (power[top] as number)) top = k;
+    }
+    if (top < 0) return { rivalHz: null, rivalLogRatio: null };
+    const rival = sinusoidFit(fitted, target, [(top + 1) * search.stepHz], { steps: 2, mostShiftHz: search.stepHz });
+    const ratio = meanSquare(rival.residual) / Math.max(meanSquare(found.residual), 1e-300);
+    return {
+      rivalHz: rival.frequenciesHz[0] as number,
+      rivalLogRatio: Math.max(0, (fitted.length / 2) * Math.log(Math.max(ratio, 1e-300))),
+    };
+  }
+}
+
+/** Every fifth sample on average, without a period that a tone could share, takes no part in the fit. */
+const isHeld = (n: number): boolean => (Math.imul(n + 1, 0x9e3779b1) >>> 16) % 5 === 0;
+
+const part = (source: Float64Array, held: boolean): Float64Array => source.filter((_, n) => isHeld(n) === held);
+
+const less = (values: Float64Array, model: Float64Array): Float64Array =>
+  values.map((value, n) => value - (model[n] as number));
+
+function meanSquare(values: Float64Array): number {
+  return values.reduce((sum, value) => sum + value * value, 0) / Math.max(1, values.length);
+}
