@@ -13,6 +13,8 @@ export interface OrderMeasurement {
 
 export interface OrderLawMeasurement {
   mode: SpeedMode;
+  /** Mean rate of the pulses of a speed channel, which may be several a turn. */
+  pulseHz: number | null;
   /** Relative speed (mean 1) at both ends, and its whole range. */
   speedFrom: number;
   speedTo: number;

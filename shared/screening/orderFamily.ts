@@ -20,7 +20,7 @@ const orderTolerance = 0.1;
 
 /** The shaft's own speed behind the lines that follow one law; null where they have no common spacing. */
 export function orderFamily(
-  { inBandLines }: OrderLawMeasurement,
+  { inBandLines, pulseHz }: OrderLawMeasurement,
   sheet: AcquisitionSheet,
   binHz: number,
 ): OrderFamily | null {
@@ -33,7 +33,10 @@ export function orderFamily(
     floorDb: 0,
     peaksPerHz: 0,
   }));
-  const family = statedFamily(tones, sheet, binHz) ?? bestBlindFamily(tones, [...tones.keys()], binHz);
+  const family =
+    pulseFamily(tones, pulseHz, binHz) ??
+    statedFamily(tones, sheet, binHz) ??
+    bestBlindFamily(tones, [...tones.keys()], binHz);
   if (family === null) return null;
   const { fundamentalHz, isStated } = family;
   return {
@@ -44,6 +47,13 @@ export function orderFamily(
       return order > 0 && Math.abs(meanFrequencyHz / fundamentalHz - order) < orderTolerance ? order : null;
     },
   };
+}
+
+/** Lines at multiples of the pulse rate: an order is then counted in pulses. */
+function pulseFamily(tones: ToneMeasurement[], pulseHz: number | null, binHz: number): HarmonicFamily | null {
+  if (pulseHz === null) return null;
+  const family = followFamily(tones, 'pulses', pulseHz, 0.01 * pulseHz, binHz, true);
+  return family.members.length >= leastStatedMembers ? family : null;
 }
 
 function statedFamily(tones: ToneMeasurement[], sheet: AcquisitionSheet, binHz: number): HarmonicFamily | null {

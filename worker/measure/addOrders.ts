@@ -1,4 +1,5 @@
 import type { AcquisitionSheet } from '../../shared/schemas/acquisitionSheet.js';
+import { type ChannelSpeed, speedFromChannel } from '../dsp/warp/speedFromChannel.js';
 import type { SampleSource } from '../readers/SampleSource.js';
 import type { ChannelParts } from './buildMeasurement.js';
 import { holdLastFinite } from './IntegrityMeter.js';
@@ -55,14 +56,25 @@ export function addOrders(
   });
   const highestHz = Math.min(sheet.sensorBandHz ?? Infinity, highestRates * rateHz);
   if (highestHz <= rateHz / 2) return;
-  channels.forEach((part, c) => {
-    const found = stretches.map(({ first }, index) =>
-      measureOrders(kept[c]?.[index] ?? new Float64Array(0), {
-        sampleRateHz: rateHz,
-        highestHz,
-        fromS: first / rateHz,
-      }),
-    );
-    part.orders = found.filter((orders) => orders !== null);
+  channels.forEach((part) => (part.orders = []));
+  stretches.forEach(({ first }, index) => {
+    const samples = kept.map((buffers) => buffers[index] as Float64Array);
+    const { speed, channel } = findSpeed(samples, source.channelNames);
+    samples.forEach((values, c) => {
+      if (c === channel) return;
+      const orders = measureOrders(values, { sampleRateHz: rateHz, highestHz, fromS: first / rateHz, speed });
+      if (orders !== null) channels[c]?.orders?.push(orders);
+    });
   });
+}
+
+/** The first channel that holds a speed; a capture of one channel has none to spare. */
+function findSpeed(samples: Float64Array[], names: string[]): { speed: ChannelSpeed | null; channel: number } {
+  if (samples.length > 1) {
+    for (const [channel, values] of samples.entries()) {
+      const speed = speedFromChannel(values, names[channel] ?? '');
+      if (speed !== null) return { speed, channel };
+    }
+  }
+  return { speed: null, channel: -1 };
 }

@@ -3,14 +3,15 @@ import type {
   OrderLawMeasurement,
   OrderMeasurement,
 } from '../../shared/screening/OrderMeasurement.js';
-import { chirpVotes } from '../dsp/warp/chirpVotes.js';
+import { type ChirpVote, chirpVotes } from '../dsp/warp/chirpVotes.js';
 import { decibels } from '../dsp/decibels.js';
-import { findLaws, type FoundLaw } from '../dsp/warp/findLaws.js';
+import { findLaws, followLaw, type FoundLaw } from '../dsp/warp/findLaws.js';
 import { flattenSpectrum, type FlatSignal } from '../dsp/warp/flattenSpectrum.js';
 import { type FoldedLine, foldedLines } from '../dsp/warp/foldedLines.js';
 import { isSameRidge } from '../dsp/warp/isSameRidge.js';
 import { removeInBandLines } from '../dsp/warp/removeInBandLines.js';
 import { oppositeLaw, type SpeedLaw } from '../dsp/warp/SpeedLaw.js';
+import type { ChannelSpeed } from '../dsp/warp/speedFromChannel.js';
 import { taperEnds } from '../dsp/warp/taperEnds.js';
 import { type TransformOf, transformsBySize } from '../dsp/warp/transformsBySize.js';
 import type { WarpedTransform } from '../dsp/warp/WarpedTransform.js';
@@ -22,6 +23,8 @@ export interface OrderOptions {
   highestHz: number;
   /** Time of the first sample. */
   fromS: number;
+  /** From a speed channel of the same capture and stretch. */
+  speed?: ChannelSpeed | null;
 }
 
 export const leastOrderSamples = 2048;
@@ -49,15 +52,13 @@ export function measureOrders(samples: Float64Array, options: OrderOptions): Ord
   if (length < leastOrderSamples) return null;
   const mean = samples.reduce((sum, value) => sum + value, 0) / length;
   const flat = flattenSpectrum(samples.map((value) => value - mean));
-  const step = length > longStretch ? 2 : 1;
-  const votes = voteLengths
-    .filter((frame, index) => frame <= length / 4 && index % step === 0)
-    .flatMap((frame) => chirpVotes(flat.samples, frame));
   const tapered = taperEnds(flat.samples);
   const transformOf = transformsBySize();
-  const measured = findLaws(tapered, votes, transformOf).map((found) => ({
-    law: found.law,
-    measured: measureLaw(found, tapered, flat, options, transformOf),
+  const known = options.speed ? followLaw(tapered, options.speed.law, transformOf) : null;
+  const found = known === null ? findLaws(tapered, collectVotes(flat.samples), transformOf) : [known];
+  const measured = found.map((one) => ({
+    law: one.law,
+    measured: measureLaw(one, tapered, flat, options, transformOf, known === null ? null : (options.speed ?? null)),
   }));
   const laws = dropSameRidges(measured, options.sampleRateHz);
   return {
@@ -68,12 +69,21 @@ export function measureOrders(samples: Float64Array, options: OrderOptions): Ord
   };
 }
 
+function collectVotes(samples: Float64Array): ChirpVote[] {
+  const { length } = samples;
+  const step = length > longStretch ? 2 : 1;
+  return voteLengths
+    .filter((frame, index) => frame <= length / 4 && index % step === 0)
+    .flatMap((frame) => chirpVotes(samples, frame));
+}
+
 function measureLaw(
   { law, sharpness, steadySharpness }: FoundLaw,
   tapered: Float64Array,
   flat: FlatSignal,
   { sampleRateHz, highestHz, fromS }: OrderOptions,
   transformOf: TransformOf,
+  speed: ChannelSpeed | null,
 ): OrderLawMeasurement {
   const { length } = law;
   const durationS = length / sampleRateHz;
@@ -86,7 +96,8 @@ function measureLaw(
   const lines = foldedLines(transform.forward(law.warped, rest), law).filter(({ ratio }) => ratio > leastKeptRatio);
   const chanceRatio = lines.length === 0 ? 0 : highestByChance(rest, oppositeLaw(law), transform);
   return {
-    mode: 'blind',
+    mode: speed === null ? 'blind' : 'speedChannel',
+    pulseHz: speed === null || speed.pulses === null ? null : speed.pulses / durationS,
     speedFrom: speeds[0] as number,
     speedTo: speeds[speeds.length - 1] as number,
     speedChange: Math.max(...speeds) - Math.min(...speeds),

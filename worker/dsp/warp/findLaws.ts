@@ -25,6 +25,9 @@ const leastReach = 0.003;
 const leastLineRatio = 20;
 /** A law has to gather the spectrum this much better than steady speed does, and better than noise can. */
 const leastGain = 1.5;
+/** One that is known has to do less. */
+const leastKnownGain = 1.05;
+const noiseSharpness = 2;
 const leastSharpness = 3;
 /** Noise alone has 2: without lines there is nothing to climb on. */
 const sharpnessOfLines = 2.3;
@@ -82,6 +85,20 @@ export function findLaws(tapered: Float64Array, votes: ChirpVote[], transformOf:
     if (voted.gain > leastGainOfPath) consider(voted.law, ladder);
   }
   return found.sort((a, b) => b.sharpness - a.sharpness).slice(0, mostLaws);
+}
+
+/**
+ * A law known from elsewhere, refined up the upper rungs; null where it is steady or nothing in the stretch follows it.
+ */
+export function followLaw(tapered: Float64Array, known: SpeedLaw, transformOf: TransformOf): FoundLaw | null {
+  const count = Math.floor(countedBand * tapered.length);
+  const sharpnessOf = (law: SpeedLaw): number =>
+    sharpness(transformOf(count).forward(law.warped, tapered), firstBin, count);
+  const steady = linearLaw(0, tapered.length);
+  const law = upperRungs.reduce((reached, rung) => refineLaw(tapered, reached, rung, transformOf), known);
+  if (isSameLaw(law, steady)) return null;
+  const found = { law, sharpness: sharpnessOf(law), steadySharpness: sharpnessOf(steady) };
+  return found.sharpness > leastKnownGain * Math.max(noiseSharpness, found.steadySharpness) ? found : null;
 }
 
 /** Laws that no line below fs/2 tells apart; the ends, where samples fade, don't count. */
