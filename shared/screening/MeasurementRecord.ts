@@ -195,6 +195,8 @@ export interface ToneMeasurement {
   floorDb: number;
   /** Peaks per Hz around the tone: the density behind the chance of a match. */
   peaksPerHz: number;
+  /** The amplitude falls as exp(−decayPerS·t); missing for a steady tone. */
+  decayPerS?: number;
 }
 
 export interface IrregularMeasurement {

@@ -72,7 +72,7 @@ export function judgeChannel(
 
 /** Every method that applies, side by side. */
 function gatherEvidence(record: MeasurementRecord, thresholds: Thresholds, sheet: AcquisitionSheet): FoldEvidence {
-  if (record.irregular !== null) return judgeIrregular(record.irregular, thresholds);
+  if (record.irregular !== null) return judgeIrregular(record.irregular, thresholds, sheet);
   const binHz = record.durationS === null || record.durationS === 0 ? 0 : 1 / record.durationS;
   return joinEvidence(
     [

@@ -10,7 +10,7 @@ export interface BandPowers {
 
 /** Rounding of the arithmetic as a share of the power, so that steep spectra stay positive definite. */
 const roundingShare = 1e-12;
-const shrinking = 1.6;
+const mostStretching = 5;
 
 /**
  * Powers of frequency bands from samples at any times: maximum likelihood of structured covariances (Burg, Luenberger &
@@ -19,16 +19,14 @@ const shrinking = 1.6;
  * bands don't leak into weak ones as they do in a periodogram of uneven samples.
  * @param bands which of the covariances take part; the others are taken as empty
  */
-export function bandPowers(
-  stretches: BandCovariance[],
-  bands: number[],
-  { iterations, start }: { iterations: number; start?: BandPowers },
-): BandPowers {
+export function bandPowers(stretches: BandCovariance[], bands: number[], iterations: number): BandPowers {
   const all = stretches[0]?.pairs.length ?? 0;
   const total = meanPower(stretches);
   const powers = new Float64Array(all);
-  bands.forEach((b) => (powers[b] = start?.powers[b] ?? total / bands.length));
-  const model: BandPowers = { powers, white: start?.white ?? total / 10, freedom: new Float64Array(all) };
+  bands.forEach((b) => (powers[b] = total / bands.length));
+  const model: BandPowers = { powers, white: total / 4, freedom: new Float64Array(all) };
+  const lastRatios = new Float64Array(all + 1);
+  const stretching = new Float64Array(all + 1).fill(1);
   for (let iteration = 0; iteration < iterations; iteration++) {
     const seen = new Float64Array(all + 1);
     const expected = new Float64Array(all + 1);
@@ -36,8 +34,11 @@ export function bandPowers(
     for (const b of [...bands, all]) {
       const before = b === all ? model.white : (powers[b] as number);
       const ratio = (seen[b] as number) / Math.max(expected[b] as number, 1e-300);
-      // Falling steps are lengthened: empty bands are left sooner, and the point of rest stays the same.
-      const next = before * (ratio < 1 ? ratio ** shrinking : ratio);
+      // Steps that keep their direction are lengthened (as in Riedmiller & Braun 1993); the point of rest stays the same.
+      const isSteady = (ratio - 1) * (lastRatios[b] as number) > 0;
+      stretching[b] = isSteady ? Math.min(mostStretching, 1.5 * (stretching[b] as number)) : 1;
+      lastRatios[b] = ratio - 1;
+      const next = before * ratio ** (stretching[b] as number);
       if (b === all) model.white = next;
       else {
         model.freedom[b] = before * (expected[b] as number);
@@ -48,17 +49,17 @@ export function bandPowers(
   return model;
 }
 
-/** Natural logarithm of the likelihood of the samples under the model, up to a constant. */
-export function logLikelihood(stretches: BandCovariance[], model: BandPowers, bands: number[]): number {
-  const total = meanPower(stretches);
-  return stretches.reduce((sum, stretch) => {
-    const { factor, logDeterminant } = factorise(stretch, model, bands, roundingShare * total);
-    const white = forward(factor, stretch.values);
-    return sum - 0.5 * white.reduce((energy, value) => energy + value * value, 0) - 0.5 * logDeterminant;
-  }, 0);
+/**
+ * Natural logarithm of one stretch's likelihood under the model, up to a constant.
+ * @param blurPower white noise added to the model: differences far below it don't count
+ */
+export function logLikelihood(stretch: BandCovariance, model: BandPowers, bands: number[], blurPower: number): number {
+  const { factor, logDeterminant } = factorise(stretch, model, bands, blurPower);
+  const white = forward(factor, stretch.values);
+  return -0.5 * white.reduce((energy, value) => energy + value * value, 0) - 0.5 * logDeterminant;
 }
 
-export function meanPower(stretches: BandCovariance[]): number {
+function meanPower(stretches: BandCovariance[]): number {
   let [sum, count] = [0, 0];
   for (const { values } of stretches) {
     for (const value of values) sum += value * value;
@@ -167,7 +168,8 @@ function invertFactor(factor: Float64Array, size: number): Float64Array {
     const pivot = 1 / (factor[row + i] as number);
     for (let k = 0, other = 0; k < i; other += ++k) {
       const weight = (factor[row + k] as number) * pivot;
-      for (let j = 0; j <= k; j++) inverse[row + j] = (inverse[row + j] as number) - weight * (inverse[other + j] as number);
+      for (let j = 0; j <= k; j++)
+        inverse[row + j] = (inverse[row + j] as number) - weight * (inverse[other + j] as number);
     }
     inverse[row + i] = pivot;
   }

@@ -54,11 +54,7 @@ export function nonUniformTransform(angles: ArrayLike<number>, values: ArrayLike
   return createNonUniformTransform(angles, count)(values);
 }
 
-function spread(
-  angles: ArrayLike<number>,
-  size: number,
-  beta: number,
-): { places: Int32Array; weights: Float64Array } {
+function spread(angles: ArrayLike<number>, size: number, beta: number): { places: Int32Array; weights: Float64Array } {
   const places = new Int32Array(angles.length);
   const weights = new Float64Array(taps * angles.length);
   const table = kernelTable(beta);

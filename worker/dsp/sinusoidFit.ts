@@ -129,7 +129,8 @@ function leastSquares(
     const scale = scales[i] as number;
     right[i] = scale * dot(columns[i] as Float64Array, values);
     for (let j = 0; j < i; j++) {
-      normal[i * size + j] = scale * (scales[j] as number) * dot(columns[i] as Float64Array, columns[j] as Float64Array);
+      normal[i * size + j] =
+        scale * (scales[j] as number) * dot(columns[i] as Float64Array, columns[j] as Float64Array);
     }
     normal[i * size + i] = 1 + damping;
   }

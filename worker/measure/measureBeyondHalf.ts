@@ -1,5 +1,5 @@
 import type { BeyondHalfMeasurement } from '../../shared/screening/MeasurementRecord.js';
-import { type BandCovariance, bandCovariance, type FrequencyBand } from '../dsp/BandCovariance.js';
+import { bandCovariance, type FrequencyBand } from '../dsp/BandCovariance.js';
 import { type BandPowers, bandPowers, logLikelihood } from '../dsp/bandPowers.js';
 import { decibels } from '../dsp/decibels.js';
 import { quantile } from '../dsp/quantile.js';
@@ -12,6 +12,10 @@ const bandsBelow = 16;
 const bandsBeyond = 32;
 const iterations = 12;
 const lowestDb = -200;
+/** The question is what lies above −40 dB of the whole: differences 10 dB further down don't count. */
+const blurShare = 1e-5;
+/** No single stretch decides. */
+const mostPerStretch = 20;
 
 /**
  * How much of what the tones leave lies beyond half the mean rate, by maximum likelihood over bands (see bandPowers), in
@@ -39,12 +43,19 @@ export function measureBeyondHalf(
   const held = stretches.filter((_, index) => index % 2 === 1);
   const all = bands.map((_, index) => index);
   const below = all.slice(0, bandsBelow);
-  const full = bandPowers(fitted, all, { iterations });
-  const without = bandPowers(fitted, below, { iterations });
+  const full = bandPowers(fitted, all, iterations);
+  const without = bandPowers(fitted, below, iterations);
   return {
     toHz: reachHz,
-    heldOutLogRatio: logLikelihood(held, full, all) - logLikelihood(held, without, below),
-    ...sharesOf(full, bands, stretches.length / 2, { totalPower, halfHz, timesS, stretches: fitted }),
+    heldOutLogRatio: held.reduce((sum, stretch) => {
+      const blurPower = blurShare * totalPower;
+      const [withBeyond, withNone] = [
+        logLikelihood(stretch, full, all, blurPower),
+        logLikelihood(stretch, without, below, blurPower),
+      ];
+      return sum + Math.max(-mostPerStretch, Math.min(mostPerStretch, withBeyond - withNone));
+    }, 0),
+    ...sharesOf(full, bands, fitted.length, totalPower, timesS),
   };
 }
 
@@ -58,7 +69,8 @@ function sharesOf(
   { powers, white, freedom }: BandPowers,
   bands: FrequencyBand[],
   fittedStretches: number,
-  { totalPower, timesS }: { totalPower: number; halfHz: number; timesS: Float64Array; stretches: BandCovariance[] },
+  totalPower: number,
+  timesS: Float64Array,
 ): Pick<BeyondHalfMeasurement, 'beyondDb' | 'errorDb' | 'flatDb'> {
   const widths = bands.map(({ fromHz, toHz }) => toHz - fromHz);
   const flatDensity = quantile(

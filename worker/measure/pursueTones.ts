@@ -25,7 +25,10 @@ const sameToneWidths = 3;
  * lowers the residual of the fifth that took no part. Each tone is then confirmed on that fifth alone, set against its
  * rivals (another frequency in its place: the window's own pattern), and refined on all samples.
  */
-export function createTonePursuit(timesS: Float64Array, search: IrregularSearch): (values: Float64Array) => PursuedTones {
+export function createTonePursuit(
+  timesS: Float64Array,
+  search: IrregularSearch,
+): (values: Float64Array) => PursuedTones {
   const fitted = part(timesS, false);
   const periodogram = createLombScargle(fitted, search.stepHz, search.count);
   const polishing = { steps: 1, mostShiftHz: 0.25 / search.spanS };
@@ -75,7 +78,8 @@ export function createTonePursuit(timesS: Float64Array, search: IrregularSearch)
     return all.frequenciesHz.flatMap((frequencyHz, index) => {
       const tonePower = powers[index] as number;
       const isPartOfAnother = all.frequenciesHz.some(
-        (other, o) => Math.abs(other - frequencyHz) * search.spanS < sameToneWidths && (powers[o] as number) > tonePower,
+        (other, o) =>
+          Math.abs(other - frequencyHz) * search.spanS < sameToneWidths && (powers[o] as number) > tonePower,
       );
       const tone = sinusoidModel(heldTimes, found, index);
       const without = heldResidual.map((value, n) => value + (tone[n] as number));
