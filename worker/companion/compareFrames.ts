@@ -1,8 +1,3 @@
-/** Interleaved complex frames: Σ|a|². */
-export function framePower(frames: Float64Array): number {
-  return frames.reduce((sum, value) => sum + value * value, 0);
-}
-
 /** (Σ|a|²)²/Σ|a|⁴: how many frames a tone really fills. */
 export function filledFrames(frames: Float64Array): number {
   let [first, second] = [0, 0];

@@ -1,7 +1,8 @@
 import { aliasHz, candidatesHz } from '../../shared/screening/foldArithmetic.js';
 import type { ToneMeasurement, ToneMove, TonePlace } from '../../shared/screening/MeasurementRecord.js';
 import { FrameBank } from '../dsp/FrameBank.js';
-import { crossAmplitude, filledFrames, framePower } from './compareFrames.js';
+import { crossAmplitude, filledFrames } from './compareFrames.js';
+import { powerOf } from './complexSums.js';
 
 /** One channel of a capture on its own clock. */
 export interface Recorded {
@@ -70,7 +71,7 @@ export function measureMoves(
     const { ours, theirs, lengthS } = bankOf(frames);
     const hopS = (toS - fromS) / (frames + 1);
     const here = ours.at(tone.frequencyHz);
-    const power = framePower(here);
+    const power = powerOf(here);
     const soundsS = hopS * filledFrames(here);
     const spanTurns = (reach: number): number[] =>
       isAligned ? [-1, -0.5, 0, 0.5, 1].map((step) => 2 * Math.PI * step * reach * hopS) : [0];
@@ -82,9 +83,9 @@ export function measureMoves(
         const amplitude = (frames: Float64Array): number =>
           isAligned
             ? Math.max(...turns.map((turn) => crossAmplitude(template, frames, turn))) / power
-            : Math.sqrt(framePower(frames) / power);
+            : Math.sqrt(powerOf(frames) / power);
         const there = theirs.at(trueHz);
-        return { trueHz, amplitude, ratio: amplitude(there), therePower: framePower(there) };
+        return { trueHz, amplitude, ratio: amplitude(there), therePower: powerOf(there) };
       });
     const highest = Math.max(...looks.map(({ ratio }) => ratio));
     const places = looks.map(({ trueHz, amplitude, ratio, therePower }, index): TonePlace => {
