@@ -279,11 +279,13 @@ export interface FoldedZone {
   chanceDb: number;
 }
 
-/** The companion's clock against this capture's: what happens here at t happens there at t + lag. */
+/** The companion's clock against this capture's: what happens here at t happens there at clockRatio·t + lag. */
 export interface CompanionAlignment {
   lagS: number;
   /** Standard error of the lag. */
   lagErrorS: number;
+  /** Seconds of the companion's clock for one of this capture's; 1 where no drift shows. */
+  clockRatio: number;
   /** Peak of the cross-correlation over the standard deviation that unrelated captures would give. */
   significance: number;
   /** Chance of such a peak anywhere among the lags between unrelated captures. */

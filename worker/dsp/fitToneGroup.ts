@@ -1,15 +1,17 @@
 import { Matrix, solve } from 'ml-matrix';
 import { blockResponse } from './blockResponse.js';
+import { decayWeight } from './decayingTone.js';
 import type { RefinedTone } from './RefinedTone.js';
 import type { ToneDemodulator } from './ToneDemodulator.js';
 
 /** Tones closer than this many 1/T are fitted together. */
-const closeBins = 6;
+export const closeBins = 6;
 const largestGroup = 6;
+const steps = 4;
 
 /**
- * One Gauss-Newton step on amplitude (real, imaginary) and frequency of each group of close tones, jointly, against the
- * group's demodulated blocks; undone where it does not lower the residual. Changes the tones in place.
+ * Gauss-Newton steps on amplitude (real, imaginary) and frequency of each group of close tones, jointly, against the
+ * group's demodulated blocks; one is undone where it does not lower the residual. Changes the tones in place.
  */
 export function fitToneGroup(demodulator: ToneDemodulator, tones: RefinedTone[]): void {
   const spanBins = (2 * Math.PI) / (demodulator.blocks * demodulator.blockFrames);
@@ -22,7 +24,7 @@ export function fitToneGroup(demodulator: ToneDemodulator, tones: RefinedTone[])
       last !== undefined &&
       omegaOf(demodulator, tones, index) - omegaOf(demodulator, tones, last) < closeBins * spanBins;
     if (!isClose || group.length === largestGroup) {
-      if (group.length > 1) stepGroup(demodulator, tones, group);
+      if (group.length > 1) for (let step = 0; step < steps; step++) stepGroup(demodulator, tones, group);
       group = [];
     }
     if (index >= 0) group.push(index);
@@ -35,8 +37,12 @@ function omegaOf(demodulator: ToneDemodulator, tones: RefinedTone[], index: numb
 
 function stepGroup(demodulator: ToneDemodulator, tones: RefinedTone[], group: number[]): void {
   const { blocks, blockFrames, origin, omegas } = demodulator;
-  const response = (index: number, seen: number, block: number) =>
-    blockResponse(omegaOf(demodulator, tones, index) - (omegas[seen] as number), block, blockFrames, origin);
+  const response = (index: number, seen: number, block: number) => {
+    const offset = omegaOf(demodulator, tones, index) - (omegas[seen] as number);
+    const { real, imaginary } = blockResponse(offset, block, blockFrames, origin);
+    const weight = decayWeight((tones[index] as RefinedTone).decay, block, demodulator);
+    return { real: weight * real, imaginary: weight * imaginary };
+  };
   /** Adds sign × the group's tones to the blocks, as each member's demodulator sees them. */
   const addGroup = (blocksOfGroup: Float64Array, sign: number, includesOwn: boolean): Float64Array => {
     group.forEach((seen, place) => {

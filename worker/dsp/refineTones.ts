@@ -1,5 +1,6 @@
-import { blockResponse, type Complex } from './blockResponse.js';
-import { fitToneGroup } from './fitToneGroup.js';
+import { amplitudeAt, bestDecay, decayWeight, explainedPower } from './decayingTone.js';
+import { blockResponse } from './blockResponse.js';
+import { closeBins, fitToneGroup } from './fitToneGroup.js';
 import type { RefinedTone } from './RefinedTone.js';
 import type { ToneDemodulator } from './ToneDemodulator.js';
 
@@ -12,6 +13,7 @@ export function refineTones(demodulator: ToneDemodulator, searchRad: number, rou
   const tones: RefinedTone[] = demodulator.values.map((values) => ({
     delta: 0,
     amplitude: { real: 0, imaginary: 0 },
+    decay: 0,
     residual: Float64Array.from(values),
   }));
   const order = [...tones.keys()].sort((a, b) => energy(demodulator.values[b]) - energy(demodulator.values[a]));
@@ -20,13 +22,22 @@ export function refineTones(demodulator: ToneDemodulator, searchRad: number, rou
       const tone = tones[index] as RefinedTone;
       tone.residual = lessOthers(demodulator, tones, index);
       const reach = round === 0 ? searchRad : searchRad / 4;
-      tone.delta = bestOffset(demodulator, tone.residual, round === 0 ? 0 : tone.delta, reach);
-      tone.amplitude = amplitudeAt(demodulator, tone.residual, tone.delta);
+      tone.delta = bestOffset(demodulator, tone.residual, round === 0 ? 0 : tone.delta, reach, tone.decay);
+      // Two close tones beat like one that decays: such groups are fitted together as steady tones.
+      if (round > 0 && !isCrowded(demodulator, tones, index))
+        tone.decay = bestDecay(demodulator, tone.residual, tone.delta, tone.decay);
+      tone.amplitude = amplitudeAt(demodulator, tone.residual, tone.delta, tone.decay);
     }
   }
   fitToneGroup(demodulator, tones);
   tones.forEach((tone, index) => (tone.residual = lessOthers(demodulator, tones, index)));
   return tones;
+}
+
+function isCrowded({ omegas, blocks, blockFrames }: ToneDemodulator, tones: RefinedTone[], index: number): boolean {
+  const place = (at: number): number => (omegas[at] as number) + (tones[at]?.delta ?? 0);
+  const near = (closeBins * 2 * Math.PI) / (blocks * blockFrames);
+  return tones.some((_, other) => other !== index && Math.abs(place(other) - place(index)) < near);
 }
 
 function energy(values: Float64Array | undefined): number {
@@ -52,12 +63,13 @@ function lessOthers(demodulator: ToneDemodulator, tones: RefinedTone[], index: n
     if (place !== index && leak < negligible * blocks * blockFrames * ownSize) return;
     for (let block = 0; block < blocks; block++) {
       const image = blockResponse(-omega - here, block, blockFrames, origin);
-      let real = a * image.real + b * image.imaginary;
-      let imaginary = a * image.imaginary - b * image.real;
+      const weight = decayWeight(other.decay, block, demodulator);
+      let real = weight * (a * image.real + b * image.imaginary);
+      let imaginary = weight * (a * image.imaginary - b * image.real);
       if (place !== index) {
         const direct = blockResponse(omega - here, block, blockFrames, origin);
-        real += a * direct.real - b * direct.imaginary;
-        imaginary += a * direct.imaginary + b * direct.real;
+        real += weight * (a * direct.real - b * direct.imaginary);
+        imaginary += weight * (a * direct.imaginary + b * direct.real);
       }
       result[2 * block] = (result[2 * block] as number) - real;
       result[2 * block + 1] = (result[2 * block + 1] as number) - imaginary;
@@ -66,14 +78,15 @@ function lessOthers(demodulator: ToneDemodulator, tones: RefinedTone[], index: n
   return result;
 }
 
-function bestOffset(demodulator: ToneDemodulator, z: Float64Array, centre: number, reach: number): number {
+function bestOffset(
+  demodulator: ToneDemodulator,
+  z: Float64Array,
+  centre: number,
+  reach: number,
+  decay: number,
+): number {
   const span = demodulator.blocks * demodulator.blockFrames;
-  const power = (delta: number): number => {
-    const a = amplitudeAt(demodulator, z, delta);
-    // Explained power, |Σ z·conj(D)|²/Σ|D|²: the amplitude alone would favour offsets at which a block responds less.
-    const length = blockLength(delta, demodulator.blockFrames);
-    return (a.real * a.real + a.imaginary * a.imaginary) * length * length;
-  };
+  const power = (delta: number): number => explainedPower(demodulator, z, delta, decay);
   const step = Math.PI / (2 * span);
   const steps = Math.ceil(reach / step);
   let best = centre;
@@ -93,31 +106,4 @@ function bestOffset(demodulator: ToneDemodulator, z: Float64Array, centre: numbe
     width /= 2;
   }
   return best;
-}
-
-function blockLength(delta: number, blockFrames: number): number {
-  const half = Math.sin(delta / 2);
-  return Math.abs(half) < 1e-12 ? blockFrames : Math.sin((delta * blockFrames) / 2) / half;
-}
-
-/** Least-squares amplitude of a single tone at the given offset: Σ z·conj(D) / Σ |D|². */
-function amplitudeAt(demodulator: ToneDemodulator, z: Float64Array, delta: number): Complex {
-  const { blocks, blockFrames, origin } = demodulator;
-  const middle = (blockFrames - 1) / 2 - origin;
-  const length = blockLength(delta, blockFrames);
-  let c = Math.cos(delta * middle);
-  let s = -Math.sin(delta * middle);
-  const stepC = Math.cos(delta * blockFrames);
-  const stepS = -Math.sin(delta * blockFrames);
-  let real = 0;
-  let imaginary = 0;
-  for (let block = 0; block < blocks; block++) {
-    const [x, y] = [z[2 * block] as number, z[2 * block + 1] as number];
-    real += x * c - y * s;
-    imaginary += x * s + y * c;
-    const next = c * stepC - s * stepS;
-    s = s * stepC + c * stepS;
-    c = next;
-  }
-  return { real: real / (blocks * length), imaginary: imaginary / (blocks * length) };
 }
