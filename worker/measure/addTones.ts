@@ -1,6 +1,6 @@
 import type { RefinedTone } from '../dsp/RefinedTone.js';
 import { refineTones } from '../dsp/refineTones.js';
-import { type SteadyTone, subtractTones } from '../dsp/subtractTones.js';
+import { type PlainTone, subtractTones } from '../dsp/subtractTones.js';
 import { ToneDemodulator } from '../dsp/ToneDemodulator.js';
 import type { SampleSource } from '../readers/SampleSource.js';
 import type { ChannelParts } from './buildMeasurement.js';
@@ -74,9 +74,10 @@ function pickFromResiduals(
 ): PickedTone[][] {
   const residuals = work.map(() => new Float64Array(source.frameCount));
   const models = work.map(({ demodulator, refined }) =>
-    refined.map(({ delta, amplitude }, index): SteadyTone => ({
+    refined.map(({ delta, amplitude, decay }, index): PlainTone => ({
       omega: (demodulator.omegas[index] as number) + delta,
       amplitude,
+      decay,
     })),
   );
   pass(2, (channels, frames, first) => {
@@ -84,7 +85,7 @@ function pickFromResiduals(
       const mean = parts[c]?.integrity.level?.mean ?? 0;
       const block = holdLastFinite(channels[c] as Float64Array, frames).map((value) => value - mean);
       const { demodulator } = work[c] as ToneWork;
-      subtractTones(block, first, demodulator.origin, models[c] as SteadyTone[]);
+      subtractTones(block, first, demodulator.origin, models[c] as PlainTone[]);
       residual.set(block, first);
     });
   });
