@@ -24,6 +24,8 @@ export interface OrderLawMeasurement {
   steadySharpness: number;
   /** Lines below fs/2 that follow the law, at relative speed 1; strongest first. */
   inBandLines: { frequencyHz: number; standsOutDb: number }[];
+  /** Lines of other machines in the stretch, taken out as far as they are known. */
+  otherLines: number;
   /** Places looked at beyond fs/2. */
   linesTried: number;
   /** Highest line beyond fs/2 under the opposite law (deviations turned round), which nothing follows. */

@@ -90,7 +90,7 @@ function judgeLaw(
     .filter(({ inBandStandsOutDb }) => law.inBandLines.length > 0 || (inBandStandsOutDb ?? 0) > leastInBandDb)
     .map((line) => {
       const byNoise = Math.exp(Math.min(0, tried - 10 ** (line.standsOutDb / 10) / unit));
-      const byCoincidence = 1 / (rangeOverSpread * line.apartBins);
+      const byCoincidence = (1 + law.otherLines) / (rangeOverSpread * line.apartBins);
       const chanceProbability = Math.min(1, byNoise + byCoincidence);
       const tone: Tone = {
         frequencyHz: line.frequencyHz,

@@ -15,7 +15,7 @@ import type { ChannelSpeed } from '../dsp/warp/speedFromChannel.js';
 import { taperEnds } from '../dsp/warp/taperEnds.js';
 import { type TransformOf, transformsBySize } from '../dsp/warp/transformsBySize.js';
 import type { WarpedTransform } from '../dsp/warp/WarpedTransform.js';
-import { binPowers, warpedLines } from '../dsp/warp/warpedLines.js';
+import { binPowers, type WarpedLine, warpedLines } from '../dsp/warp/warpedLines.js';
 
 export interface OrderOptions {
   sampleRateHz: number;
@@ -36,6 +36,8 @@ const mostLinesKept = 32;
 const leastKeptRatio = 10;
 const inBandRatio = 10;
 const clearLeadDb = 3;
+/** So many lines that share a law in band are a machine of their own, and not one folded line. */
+const leastMachineLines = 3;
 /** Where the speed is read; the very ends, where samples fade, are left out. */
 const speedShares = Array.from({ length: 37 }, (_, i) => (i + 2) / 40);
 /** Near a multiple of fs/2 a folded order follows the opposite law for a while: such lines are no measure of chance. */
@@ -56,10 +58,13 @@ export function measureOrders(samples: Float64Array, options: OrderOptions): Ord
   const transformOf = transformsBySize();
   const known = options.speed ? followLaw(tapered, options.speed.law, transformOf) : null;
   const found = known === null ? findLaws(tapered, collectVotes(flat.samples), transformOf) : [known];
-  const measured = found.map((one) => ({
-    law: one.law,
-    measured: measureLaw(one, tapered, flat, options, transformOf, known === null ? null : (options.speed ?? null)),
-  }));
+  const stretch = { tapered, flat, options, transformOf, speed: known === null ? null : (options.speed ?? null) };
+  const supported = found.map((one) => ({ ...one, inBand: inBandLines(one.law, stretch) }));
+  const measured = supported.map((one) => {
+    // What turns with another shaft is no line here, but hundreds of its bins could pass for one.
+    const others = supported.filter((other) => other !== one && other.inBand.length >= leastMachineLines);
+    return { law: one.law, measured: measureLaw(one, others, stretch) };
+  });
   const laws = dropSameRidges(measured, options.sampleRateHz);
   return {
     fromS: options.fromS,
@@ -77,22 +82,39 @@ function collectVotes(samples: Float64Array): ChirpVote[] {
     .flatMap((frame) => chirpVotes(samples, frame));
 }
 
+interface Stretch {
+  tapered: Float64Array;
+  flat: FlatSignal;
+  options: OrderOptions;
+  transformOf: TransformOf;
+  /** Where the law comes from a speed channel. */
+  speed: ChannelSpeed | null;
+}
+
+interface SupportedLaw extends FoundLaw {
+  inBand: WarpedLine[];
+}
+
+function inBandLines(law: SpeedLaw, { tapered, transformOf }: Stretch): WarpedLine[] {
+  const count = Math.floor(law.length / 2 / Math.max(...speedShares.map(law.speedAt)));
+  return warpedLines(binPowers(transformOf(count + 64).forward(law.warped, tapered)), 3, count, inBandRatio);
+}
+
 function measureLaw(
-  { law, sharpness, steadySharpness }: FoundLaw,
-  tapered: Float64Array,
-  flat: FlatSignal,
-  { sampleRateHz, highestHz, fromS }: OrderOptions,
-  transformOf: TransformOf,
-  speed: ChannelSpeed | null,
+  { law, sharpness, steadySharpness, inBand }: SupportedLaw,
+  others: SupportedLaw[],
+  { tapered, flat, options, transformOf, speed }: Stretch,
 ): OrderLawMeasurement {
+  const { sampleRateHz, highestHz, fromS } = options;
   const { length } = law;
   const durationS = length / sampleRateHz;
   const count = Math.ceil((highestHz / sampleRateHz) * length) + 64;
   const transform = transformOf(count);
   const speeds = speedShares.map(law.speedAt);
-  const inBandCount = Math.floor(length / 2 / Math.max(...speeds));
-  const inBand = warpedLines(binPowers(transformOf(count).forward(law.warped, tapered)), 3, inBandCount, inBandRatio);
-  const rest = removeInBandLines(tapered, law, transformOf);
+  const rest = [law, ...others.map((other) => other.law)].reduce(
+    (left, removed) => removeInBandLines(left, removed, transformOf),
+    tapered,
+  );
   const lines = foldedLines(transform.forward(law.warped, rest), law).filter(({ ratio }) => ratio > leastKeptRatio);
   const chanceRatio = lines.length === 0 ? 0 : highestByChance(rest, oppositeLaw(law), transform);
   return {
@@ -106,6 +128,7 @@ function measureLaw(
     inBandLines: inBand
       .slice(0, mostLinesKept)
       .map(({ bin, ratio }) => ({ frequencyHz: bin / durationS, standsOutDb: decibels(ratio) })),
+    otherLines: others.reduce((sum, other) => sum + other.inBand.length, 0),
     linesTried: count,
     chanceStandsOutDb: decibels(Math.max(1, chanceRatio)),
     lines: lines.slice(0, mostLinesKept).map((line) => {
