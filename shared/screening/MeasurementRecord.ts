@@ -197,6 +197,11 @@ export interface ToneMeasurement {
   peaksPerHz: number;
   /** The amplitude falls as exp(−decayPerS·t); missing for a steady tone. */
   decayPerS?: number;
+  /**
+   * Phase against a steady tone in equal parts of the capture, straight line taken out; `errorRad` is the standard deviation
+   * of one part. Kept where some tone of the channel shows a wander.
+   */
+  phaseTrack?: { phasesRad: number[]; errorRad: number };
 }
 
 export interface IrregularMeasurement {

@@ -90,23 +90,3 @@ export function bestDecay(stretch: Stretch, z: Float64Array, delta: number, star
   const noise = Math.max(total - bestPower, 1e-300) / Math.max(1, 2 * stretch.blocks - 4);
   return bestPower - steady > leastGain * noise ? best : 0;
 }
-
-/**
- * What a decay does to a tone's mean power over the stretch (against its power in the middle), and to the Cramér-Rao bound of
- * its frequency (against a steady tone of the same mean power): the bound goes with the spread in time of the tone's energy.
- */
-export function decayFigures(decay: number, stretch: Stretch): { meanPower: number; boundFactor: number } {
-  if (decay === 0) return { meanPower: 1, boundFactor: 1 };
-  let [sum, first, second, even] = [0, 0, 0, 0];
-  for (let block = 0; block < stretch.blocks; block++) {
-    const time = blockTime(block, stretch);
-    const energy = decayWeight(decay, block, stretch) ** 2;
-    sum += energy;
-    first += energy * time;
-    second += energy * time * time;
-    even += time * time;
-  }
-  const spread = second / sum - (first / sum) ** 2 + stretch.blockFrames ** 2 / 12;
-  const evenSpread = even / stretch.blocks + stretch.blockFrames ** 2 / 12;
-  return { meanPower: sum / stretch.blocks, boundFactor: Math.sqrt(evenSpread / spread) };
-}

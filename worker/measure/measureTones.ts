@@ -1,7 +1,6 @@
 import type { ToneMeasurement } from '../../shared/screening/MeasurementRecord.js';
 import { cramerRaoHz } from '../dsp/cramerRaoHz.js';
 import { decayEnvelope } from '../dsp/decayEnvelope.js';
-import { decayFigures } from '../dsp/decayingTone.js';
 import { decibels } from '../dsp/decibels.js';
 import { type PhaseTrack, phaseTrack } from '../dsp/phaseTrack.js';
 import type { RefinedTone } from '../dsp/RefinedTone.js';
@@ -28,9 +27,9 @@ export function measureTones(
   const frames = demodulator.blocks * demodulator.blockFrames;
   const measured = picked.map((tone, index) => {
     const fit = refined[index];
-    const { meanPower, boundFactor } = decayFigures(fit?.decay ?? 0, demodulator);
+    const { meanSquare, boundFactor } = decayEnvelope(fit?.decay ?? 0, frames);
     const inMiddle = fit === undefined ? 0 : 2 * (fit.amplitude.real ** 2 + fit.amplitude.imaginary ** 2);
-    const coherent = inMiddle * meanPower;
+    const coherent = inMiddle * meanSquare;
     const boundHz =
       boundFactor * cramerRaoHz(Math.max(coherent, tone.power) / Math.max(tone.floor, 1e-300), frames, sampleRateHz);
     const isSteady = fit !== undefined && coherent > leastCoherentShare * tone.power;
