@@ -1,7 +1,7 @@
 import { createChirpTransform } from '../dsp/createChirpTransform.js';
 import { createRealFft } from '../dsp/createRealFft.js';
 import { hannWindow } from '../dsp/hannWindow.js';
-import type { Recorded } from './measureMoves.js';
+import type { Clock, Recorded } from './measureMoves.js';
 
 /**
  * Two aligned captures cut into the same moments and put on one frequency grid. `ours` holds this capture's transform at
@@ -26,19 +26,16 @@ const leastSegments = 8;
 
 /**
  * Hann-windowed segments, 50 % overlap; longer captures are sampled by segments spread evenly.
- * @param lagS what happens in `own` at t happens in `other` at t + lag
- * @param clockRatio seconds of the companion's clock for one of this capture's
  * @param reachHz highest frequency wanted of the companion
  * @returns null where the overlap is too short
  */
 export function zoneCells(
   own: Recorded,
   other: Recorded,
-  lagS: number,
-  clockRatio: number,
+  { lagS, clockRatio }: Clock,
   reachHz: number,
 ): ZoneCells | null {
-  const fromS = Math.max(0, -lagS);
+  const fromS = Math.max(0, -lagS / clockRatio);
   const toS = Math.min(own.samples.length / own.rateHz, (other.samples.length / other.rateHz - lagS) / clockRatio);
   const frames = Math.floor((toS - fromS) * own.rateHz) - 2;
   const length = Math.min(1024, 2 ** Math.floor(Math.log2(Math.max(1, frames / 48))));

@@ -2,6 +2,7 @@ import type { CompanionAlignment } from '../../shared/screening/MeasurementRecor
 import { createRealFft } from '../dsp/createRealFft.js';
 import { inverseRealFft } from '../dsp/inverseRealFft.js';
 import { resampleUniform } from '../dsp/resampleUniform.js';
+import { clockDrift } from './clockDrift.js';
 
 /** Values of either capture that enter the correlation. */
 const mostValues = 2 ** 17;
@@ -61,7 +62,10 @@ export function alignCaptures(
   const [below, middle, above] = [at(peak - 1), at(peak), at(peak + 1)];
   const bend = below - 2 * middle + above;
   const coarse = peak + (bend === 0 ? 0 : Math.max(-0.5, Math.min(0.5, (0.5 * (below - above)) / bend)));
-  const { lag, errorValues } = refineLag(cross, size, last, coarse, isInverted);
+  const refined = refineLag(cross, size, last, coarse, isInverted);
+  const inverted = isInverted ? b.map((value) => -value) : b;
+  const { lagShift, drift } = clockDrift(a, inverted, refined.lag, commonBand);
+  const lag = refined.lag + lagShift;
   // Padding makes neighbouring bins alike: fewer of them speak for themselves.
   const perIndependent = size / Math.max(a.length, b.length);
   const significance = (Math.abs(middle) * size) / 2 / Math.sqrt((squares / 2) * perIndependent);
@@ -69,7 +73,8 @@ export function alignCaptures(
   const trials = 2 * (a.length + b.length);
   return {
     lagS: lag / rateHz,
-    lagErrorS: errorValues / rateHz,
+    lagErrorS: refined.errorValues / rateHz,
+    clockRatio: 1 + drift,
     significance,
     chanceProbability: Math.min(1, trials * Math.exp(-(significance ** 2) / 2)),
     agreement: (Math.abs(middle) * size) / 2 / weights,

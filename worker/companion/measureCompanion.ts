@@ -2,7 +2,7 @@ import type { AcquisitionSheet } from '../../shared/schemas/acquisitionSheet.js'
 import type { CompanionMeasurement, FoldedBand, MeasurementRecord } from '../../shared/screening/MeasurementRecord.js';
 import { alignCaptures } from './alignCaptures.js';
 import { foldedCoherence } from './foldedCoherence.js';
-import { measureMoves, type Recorded } from './measureMoves.js';
+import { type Clock, measureMoves, type Recorded } from './measureMoves.js';
 import type { Excerpt } from './readExcerpt.js';
 import { zoneCells } from './ZoneCells.js';
 
@@ -25,7 +25,7 @@ export function measureCompanion(
   const alignment = alignCaptures(own.samples, own.rateHz, other.samples, other.rateHz);
   const isAligned =
     alignment !== null && alignment.chanceProbability < alignedChance && alignment.agreement >= leastAgreement;
-  const lagS = isAligned ? alignment.lagS : null;
+  const clock = isAligned ? alignment : null;
   const reachHz = sheet.sensorBandHz ?? defaultReach * Math.max(own.rateHz, other.rateHz);
   return {
     name,
@@ -33,8 +33,8 @@ export function measureCompanion(
     durationS: other.record.durationS ?? 0,
     tones: other.record.tones,
     alignment,
-    moves: measureMoves(own, other, lagS, own.record.tones, reachHz),
-    folded: lagS === null ? null : measureFolded(own, other, lagS, reachHz),
+    moves: measureMoves(own, other, clock, own.record.tones, reachHz),
+    folded: clock === null ? null : measureFolded(own, other, clock, reachHz),
   };
 }
 
@@ -42,10 +42,10 @@ export function measureCompanion(
 const fastRatio = 1.9;
 const mostZones = 4;
 
-function measureFolded(own: Recorded, other: Recorded, lagS: number, reachHz: number): FoldedBand[] | null {
+function measureFolded(own: Recorded, other: Recorded, clock: Clock, reachHz: number): FoldedBand[] | null {
   const isFast = other.rateHz >= fastRatio * own.rateHz;
   const upToHz = isFast ? other.rateHz / 2 : Math.min(reachHz, (mostZones * own.rateHz) / 2);
-  const cells = zoneCells(own, other, lagS, 1, upToHz);
+  const cells = zoneCells(own, other, clock, upToHz);
   return cells === null ? null : foldedCoherence(cells);
 }
 

@@ -10,6 +10,12 @@ export interface Recorded {
   rateHz: number;
 }
 
+/** What happens in one capture at t happens in the other at clockRatio·t + lag. */
+export interface Clock {
+  lagS: number;
+  clockRatio: number;
+}
+
 const mostTones = 40;
 const mostPlaces = 24;
 /** Two captures' clocks agree to this share of the frequency. */
@@ -27,21 +33,24 @@ const besideWidths = [-2.75, -1.75, 1.75, 2.75] as const;
  * Looks for each tone of a capture in its companion: at its own place, and where each frequency that looks like it here lands
  * there. Aligned captures are compared frame by frame, phase and all, so that decay, beats and wander are shared by both sides
  * and cost nothing; captures of repeated events by their power.
- * @param lagS what happens in `own` at t happens in `other` at t + lag; null where the captures can't be aligned
+ * @param clock null where the captures can't be aligned
  * @param reachHz highest true frequency looked for
  */
 export function measureMoves(
   own: Recorded,
   other: Recorded,
-  lagS: number | null,
+  clock: Clock | null,
   tones: ToneMeasurement[],
   reachHz: number,
 ): ToneMove[] {
-  const isAligned = lagS !== null;
+  const isAligned = clock !== null;
+  // The companion's samples on this capture's clock.
+  const startS = clock === null ? 0 : -clock.lagS / clock.clockRatio;
+  const otherRateHz = other.rateHz * (clock?.clockRatio ?? 1);
   const ownS = own.samples.length / own.rateHz;
   const otherS = other.samples.length / other.rateHz;
-  const fromS = isAligned ? Math.max(0, -lagS) : 0;
-  const toS = isAligned ? Math.min(ownS, otherS - lagS) : ownS;
+  const fromS = Math.max(0, startS);
+  const toS = isAligned ? Math.min(ownS, startS + other.samples.length / otherRateHz) : ownS;
   if (!(toS > fromS)) return [];
   const banks = new Map<number, { ours: FrameBank; theirs: FrameBank; lengthS: number }>();
   const bankOf = (frames: number) => {
@@ -52,7 +61,7 @@ export function measureMoves(
       lengthS,
       ours: new FrameBank(own.samples, own.rateHz, 0, centres(fromS, toS - fromS), lengthS),
       theirs: isAligned
-        ? new FrameBank(other.samples, other.rateHz, -lagS, centres(fromS, toS - fromS), lengthS)
+        ? new FrameBank(other.samples, otherRateHz, startS, centres(fromS, toS - fromS), lengthS)
         : new FrameBank(other.samples, other.rateHz, 0, centres(0, otherS), lengthS),
     };
     banks.set(frames, made);
@@ -95,7 +104,7 @@ export function measureMoves(
       const beside = (isLooked ? besideWidths : [])
         .map((width) => amplitude(theirs.at(trueHz + width * (2 / lengthS))))
         .sort((a, b) => a - b);
-      const sign = signOf(trueHz, other.rateHz);
+      const sign = signOf(trueHz, otherRateHz);
       const isElsewhere = Math.abs(expectedHz - tone.frequencyHz) > 2 / lengthS && expectedHz < own.rateHz / 2;
       return {
         trueHz,

@@ -14,6 +14,7 @@ import { buildRecord, buildTone } from '../../support/buildRecord.js';
 const alignment = {
   lagS: 0,
   lagErrorS: 1e-6,
+  clockRatio: 1,
   significance: 30,
   chanceProbability: 1e-12,
   agreement: 0.9,

@@ -34,6 +34,13 @@ describe('alignCaptures', () => {
     expect((there?.lagS ?? 0) + (back?.lagS ?? 1)).toBeCloseTo(0, 6);
   });
 
+  it('measures a clock that runs 80 ppm slow', () => {
+    const own = sampled(event, 5000, 6, { noise: 0.001, seed: 1 });
+    const other = sampled(event, 4096 / 1.00008, 6, { startS: -0.4, noise: 0.001, seed: 2 });
+    const found = alignCaptures(own, 5000, other, 4096);
+    expect((found?.clockRatio ?? 1) - 1).toBeCloseTo(-0.00008, 5);
+  });
+
   it('sees no lag between unrelated noise', () => {
     const found = Array.from({ length: 20 }, (_, seed) =>
       alignCaptures(seededNoise(4000, 2 * seed + 1), 2000, seededNoise(5000, 2 * seed + 2), 2500),

@@ -17,8 +17,10 @@ const withNoise = (samples: Float64Array, deviation: number, seed: number): Floa
   return samples.map((value, n) => value + deviation * (noise[n] as number));
 };
 
+const atOnce = { lagS: 0, clockRatio: 1 };
+
 function bandsOf(slow: Float64Array, fast: Float64Array, fastHz = 8000): FoldedBand[] {
-  const cells = zoneCells({ samples: slow, rateHz: 2000 }, { samples: fast, rateHz: fastHz }, 0, 1, fastHz / 2);
+  const cells = zoneCells({ samples: slow, rateHz: 2000 }, { samples: fast, rateHz: fastHz }, atOnce, fastHz / 2);
   if (cells === null) throw new Error('The captures are too short.');
   return foldedCoherence(cells);
 }
@@ -91,6 +93,6 @@ describe('foldedCoherence', () => {
 
   it('needs a common stretch of some segments', () => {
     const short = { samples: seededNoise(500), rateHz: 2000 };
-    expect(zoneCells(short, { samples: seededNoise(4000), rateHz: 8000 }, 0, 1, 4000)).toBeNull();
+    expect(zoneCells(short, { samples: seededNoise(4000), rateHz: 8000 }, atOnce, 4000)).toBeNull();
   });
 });

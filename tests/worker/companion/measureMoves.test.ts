@@ -26,7 +26,13 @@ function judge(
   own: Float64Array,
   other: Float64Array,
 ): { outcome: string; trueHz: number | undefined }[] {
-  const moves = measureMoves({ samples: own, rateHz: 5000 }, { samples: other, rateHz: 4096 }, lagS, here, 10_000);
+  const moves = measureMoves(
+    { samples: own, rateHz: 5000 },
+    { samples: other, rateHz: 4096 },
+    lagS === null ? null : { lagS, clockRatio: 1 },
+    here,
+    10_000,
+  );
   const gainDb = companionGainDb(moves) ?? Number.NaN;
   return here.map((tone) => {
     const move = moves.find(({ frequencyHz }) => frequencyHz === tone.frequencyHz);
@@ -72,6 +78,14 @@ describe('measureMoves', () => {
   it('finds nothing to compare where the captures do not overlap', () => {
     const own = sampled(event, 5000, 1);
     const other = sampled(event, 4096, 1);
-    expect(measureMoves({ samples: own, rateHz: 5000 }, { samples: other, rateHz: 4096 }, 3, here, 9000)).toEqual([]);
+    expect(
+      measureMoves(
+        { samples: own, rateHz: 5000 },
+        { samples: other, rateHz: 4096 },
+        { lagS: 3, clockRatio: 1 },
+        here,
+        9000,
+      ),
+    ).toEqual([]);
   });
 });
