@@ -1,10 +1,13 @@
-import type { IrregularMeasurement, IrregularTone } from './MeasurementRecord.js';
+import type { BeyondHalfMeasurement, IrregularMeasurement, IrregularTone } from './MeasurementRecord.js';
 import { normalProbability } from './normalProbability.js';
 
 /** What the fold score and its calibration mean by folded: more than this share of the power. */
 const materialShareDb = -40;
 /** Of a level estimated from a capture of limited length and steadiness. */
 const levelErrorDb = 1.5;
+const largestChance = 0.01;
+/** Noise alone scatters over the bands, and what lies above the common level adds up to some 6 dB over the error. */
+const leastOverErrorDb = 6;
 const leastRatio = -6;
 const largestRatio = 6;
 /** Nothing seen, but noise could hide a little. */
@@ -25,6 +28,14 @@ export interface IrregularShare {
 const fromDb = (level: number): number => 10 ** (level / 10);
 const toDb = (power: number): number => 10 * Math.log10(Math.max(power, 1e-40));
 
+/**
+ * Chance that held-out stretches favour content beyond half the mean rate this much where there is none. Half the log
+ * ratio counts: on simulated white and coloured noise below half the mean rate, 240 captures, none passed 8.3.
+ */
+export function broadbandChance({ heldOutLogRatio }: BeyondHalfMeasurement): number {
+  return Math.min(1, Math.exp(-heldOutLogRatio / 2));
+}
+
 /** Adds up the tones shown and, where held-out stretches confirm it, the rest beyond half the mean rate. */
 export function irregularShare(
   { beyond, totalDb, tones: found }: IrregularMeasurement,
@@ -36,7 +47,9 @@ export function irregularShare(
   const toneShare = total > 0 ? sumOf(tones) / total : 0;
   const rest = beyond ?? null;
   const isBroadbandShown =
-    rest !== null && rest.heldOutLogRatio > -Math.log(1 - confidenceWanted) && rest.beyondDb > rest.errorDb + 3;
+    rest !== null &&
+    broadbandChance(rest) < Math.min(1 - confidenceWanted, largestChance) &&
+    rest.beyondDb > rest.errorDb + leastOverErrorDb;
   const shown = toneShare + (isBroadbandShown ? fromDb(rest.beyondDb) : 0);
   const most =
     rest === null ? null : toneShare + fromDb(rest.beyondDb) + fromDb(rest.flatDb) + 2 * fromDb(rest.errorDb);

@@ -3,7 +3,7 @@ import type { Finding, Tone } from '../schemas/screening.js';
 import type { Thresholds } from '../schemas/thresholds.js';
 import { type FoldEvidence, isFoldedTone } from './FoldEvidence.js';
 import { formatDb, formatHz, formatPercent } from './formatNumber.js';
-import { type IrregularShare, irregularShare } from './irregularShare.js';
+import { broadbandChance, type IrregularShare, irregularShare } from './irregularShare.js';
 import type { IrregularMeasurement, IrregularTone } from './MeasurementRecord.js';
 
 const reasons: Record<IrregularMeasurement['limitedBy'], string> = {
@@ -120,9 +120,7 @@ function toneFinding(tone: Tone, measured: IrregularMeasurement, thresholds: Thr
   };
 }
 
-/** Held-out likelihood with even prior odds. */
-const broadbandConfidence = ({ beyond }: IrregularMeasurement): number =>
-  1 / (1 + Math.exp(-(beyond?.heldOutLogRatio ?? 0)));
+const broadbandConfidence = ({ beyond }: IrregularMeasurement): number => (beyond ? 1 - broadbandChance(beyond) : 0);
 
 function shareFinding({ shownDb }: IrregularShare, measured: IrregularMeasurement): Finding {
   const { beyond, meanRateHz, reachHz } = measured;

@@ -4,6 +4,21 @@
  * against the grid as a whole, not interval by interval, so that single roundings don't hide it.
  */
 export function commonTimeStep(timesS: Float64Array, roundingStepS: number): number | null {
+  return gridStep(timesS, roundingStepS) ?? commonDivisor(timesS, roundingStepS);
+}
+
+/** Stamps written in whole steps have intervals of whole steps, however they came about. */
+function commonDivisor(timesS: Float64Array, roundingStepS: number): number | null {
+  if (!(roundingStepS > 0)) return null;
+  let divisor = 0;
+  for (let n = 1; n < timesS.length && divisor !== 1; n++) {
+    let rest = Math.round(((timesS[n] as number) - (timesS[n - 1] as number)) / roundingStepS);
+    while (rest > 0) [divisor, rest] = [rest, divisor % rest];
+  }
+  return divisor === 0 ? null : divisor * roundingStepS;
+}
+
+function gridStep(timesS: Float64Array, roundingStepS: number): number | null {
   const intervals = timesS.subarray(1).map((time, n) => time - (timesS[n] as number));
   const least = intervals.reduce(
     (smallest, interval) => (interval > roundingStepS ? Math.min(smallest, interval) : smallest),
@@ -43,21 +58,21 @@ function fittedStep(timesS: Float64Array, start: number, roundingStepS: number):
     const count = Math.min(reach, timesS.length);
     let [k, meanK, meanT, kk, kt, tt] = [0, 0, 0, 0, 0, 0];
     for (let n = 0; n < count; n++) {
-      const time = (timesS[n] as number) - (timesS[0] as number);
       if (n > 0) k += Math.round(((timesS[n] as number) - (timesS[n - 1] as number)) / step);
-      // Running sums about the mean (Welford 1962).
-      const [dk, dt] = [k - meanK, time - meanT];
+      // Running sums about the mean (Welford 1962) of what the step so far leaves: small numbers keep their digits.
+      const off = (timesS[n] as number) - (timesS[0] as number) - step * k;
+      const [dk, dt] = [k - meanK, off - meanT];
       meanK += dk / (n + 1);
       meanT += dt / (n + 1);
       kk += dk * (k - meanK);
-      kt += dk * (time - meanT);
-      tt += dt * (time - meanT);
+      kt += dk * (off - meanT);
+      tt += dt * (off - meanT);
     }
     if (!(kk > 0)) return null;
     const rms = Math.sqrt(Math.max(0, tt - (kt * kt) / kk) / count);
     // Few stamps scatter more about their own deviation.
-    if (rms > allowed * (1 + 1 / Math.sqrt(count)) + 1e-12 * Math.abs(meanT)) return null;
-    step = kt / kk;
+    if (rms > allowed * (1 + 1 / Math.sqrt(count))) return null;
+    step += kt / kk;
     if (count === timesS.length) return step;
   }
 }

@@ -44,16 +44,38 @@ export function highestAboveFloor(power: Float64Array): { index: number; ratio: 
 }
 
 /**
- * The strongest place of those that stand at least `leastRatio` above their surroundings; null for none. Strength decides:
- * a strong tone's images in the window's pattern may stand higher above what surrounds them than the tone itself.
+ * The strongest place of those that stand at least `leastRatio` above their surroundings, and the places nearly as strong;
+ * null for none. Strength decides: a strong tone's images in the window's pattern may stand higher above what surrounds
+ * them than the tone itself.
  */
-export function strongestAboveFloor(power: Float64Array, leastRatio: number): { index: number; ratio: number } | null {
+export function strongestAboveFloor(
+  power: Float64Array,
+  leastRatio: number,
+): { ratio: number; places: number[] } | null {
   const floor = localFloor(power);
-  let found: { index: number; ratio: number } | null = null;
+  let [top, ratio] = [-1, 0];
   for (let k = 0; k < power.length; k++) {
-    if (found !== null && !((power[k] as number) > (power[found.index] as number))) continue;
-    const ratio = (power[k] as number) / (floor[k] as number);
-    if (ratio >= leastRatio) found = { index: k, ratio };
+    if (top >= 0 && !((power[k] as number) > (power[top] as number))) continue;
+    const here = (power[k] as number) / (floor[k] as number);
+    if (here >= leastRatio) [top, ratio] = [k, here];
   }
-  return found;
+  if (top < 0) return null;
+  const standing = power.map((value, k) => (value / (floor[k] as number) >= leastRatio ? value : 0));
+  return { ratio, places: nearlyHighest(standing) };
+}
+
+/** A peak half-way between the coarsest grid points shows at least this share of its height. */
+const seenShare = 0.75;
+const mostPlaces = 12;
+
+/** Local maxima within what the grid may hide of the highest, the highest first. */
+export function nearlyHighest(power: Float64Array): number[] {
+  const least = seenShare * power.reduce((highest, value) => Math.max(highest, value), 0);
+  const places: number[] = [];
+  if (!(least > 0)) return places;
+  for (let k = 0; k < power.length; k++) {
+    const here = power[k] as number;
+    if (here >= least && here >= (power[k - 1] ?? 0) && here > (power[k + 1] ?? 0)) places.push(k);
+  }
+  return places.sort((a, b) => (power[b] as number) - (power[a] as number)).slice(0, mostPlaces);
 }

@@ -1,7 +1,7 @@
 import type { IrregularTone } from '../../shared/screening/MeasurementRecord.js';
 import { decibels } from '../dsp/decibels.js';
 import { createLombScargle } from '../dsp/lombScargle.js';
-import { localFloor, strongestAboveFloor } from '../dsp/localFloor.js';
+import { localFloor, nearlyHighest, strongestAboveFloor } from '../dsp/localFloor.js';
 import { type ExtremeValueLaw, logChanceOfPeak, shuffledMaxima } from '../dsp/shuffledMaxima.js';
 import { type SinusoidFit, sinusoidFit, sinusoidModel } from '../dsp/sinusoidFit.js';
 import type { IrregularSearch } from './irregularReach.js';
@@ -49,17 +49,41 @@ export function createTonePursuit(
       const leastRatio = Math.log(Math.max(1, search.reachHz * search.spanS)) - leastLogChance;
       const peak = strongestAboveFloor(periodogram(fit.residual), leastRatio);
       if (peak === null) break;
-      const startHz = sinusoidFit(fitted, fit.residual, [(peak.index + 1) * search.stepHz], {
-        steps: 2,
-        mostShiftHz: search.stepHz,
-      }).frequenciesHz;
-      const next = sinusoidFit(fitted, fitValues, [...fit.frequenciesHz, ...startHz], polishing);
+      const startHz = bestOffGrid(fit.residual, peak.places);
+      const next = sinusoidFit(fitted, fitValues, [...fit.frequenciesHz, startHz], polishing);
       const nextHeld = meanSquare(less(heldValues, sinusoidModel(heldTimes, next)));
       if (!(nextHeld < held)) break;
       [fit, held] = [next, nextHeld];
       ratios.push(peak.ratio);
     }
-    return { ...fit, ratios };
+    return { ...swapRivals(fit, fitValues), ratios };
+  }
+
+  /** Between grid points a peak may be higher than on them: of those nearly as high, the one that explains most. */
+  function bestOffGrid(residual: Float64Array, places: number[]): number {
+    let best = { frequencyHz: 0, left: Number.POSITIVE_INFINITY };
+    for (const place of places) {
+      const fit = sinusoidFit(fitted, residual, [(place + 1) * search.stepHz], {
+        steps: 2,
+        mostShiftHz: search.stepHz,
+      });
+      const left = meanSquare(fit.residual);
+      if (left < best.left) best = { frequencyHz: fit.frequenciesHz[0] as number, left };
+    }
+    return best.frequencyHz;
+  }
+
+  /** With all tones found, one taken for another by the window's pattern may show: then the better one takes its place. */
+  function swapRivals(start: SinusoidFit, fitValues: Float64Array): SinusoidFit {
+    let fit = start;
+    for (let index = 0; index < start.frequenciesHz.length; index++) {
+      const { rivalHz } = rivalOf(fit, index);
+      if (rivalHz === null) continue;
+      const swapped = fit.frequenciesHz.with(index, rivalHz);
+      const next = sinusoidFit(fitted, fitValues, swapped, polishing);
+      if (meanSquare(next.residual) < meanSquare(fit.residual)) fit = next;
+    }
+    return fit;
   }
 
   function describe(
@@ -87,7 +111,11 @@ export function createTonePursuit(
       const place = Math.min(floor.length - 1, Math.max(0, Math.round(frequencyHz / search.stepHz) - 1));
       // Share of the residual that a frequency takes by chance, against 2/(N − 1) for white noise: the noise as met there.
       const colour = ((floor[place] as number) * (fitted.length - 1)) / 2;
-      const ratio = found.ratios[index] as number;
+      // What the tone takes with all others in place: as found at first it may have stood for several.
+      const ratio = Math.min(
+        found.ratios[index] as number,
+        (fitted.length * tonePower) / (2 * noise * Math.max(0.1, colour)),
+      );
       if (isPartOfAnother || !(heldOutGainDb > 0) || !(frequencyHz > 0)) return [];
       return {
         frequencyHz,
@@ -107,13 +135,12 @@ export function createTonePursuit(
     const target = found.residual.map((value, n) => value + (tone[n] as number));
     const power = periodogram(target);
     const frequencyHz = found.frequenciesHz[index] as number;
-    let top = -1;
-    for (let k = 0; k < power.length; k++) {
-      if (Math.abs((k + 1) * search.stepHz - frequencyHz) * search.spanS < sameToneWidths) continue;
-      if (top < 0 || (power[k] as number) > (power[top] as number)) top = k;
-    }
-    if (top < 0) return { rivalHz: null, rivalLogRatio: null };
-    const rival = sinusoidFit(fitted, target, [(top + 1) * search.stepHz], { steps: 2, mostShiftHz: search.stepHz });
+    const far = power.map((value, k) =>
+      Math.abs((k + 1) * search.stepHz - frequencyHz) * search.spanS < sameToneWidths ? 0 : value,
+    );
+    const places = nearlyHighest(far);
+    if (places.length === 0) return { rivalHz: null, rivalLogRatio: null };
+    const rival = sinusoidFit(fitted, target, [bestOffGrid(target, places)]);
     const ratio = meanSquare(rival.residual) / Math.max(meanSquare(found.residual), 1e-300);
     return {
       rivalHz: rival.frequenciesHz[0] as number,
