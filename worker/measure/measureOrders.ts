@@ -8,6 +8,7 @@ import { decibels } from '../dsp/decibels.js';
 import { findLaws, followLaw, type FoundLaw } from '../dsp/warp/findLaws.js';
 import { flattenSpectrum, type FlatSignal } from '../dsp/warp/flattenSpectrum.js';
 import { type FoldedLine, foldedLines } from '../dsp/warp/foldedLines.js';
+import { followsOtherLaw } from '../dsp/warp/followsOtherLaw.js';
 import { isSameRidge } from '../dsp/warp/isSameRidge.js';
 import { removeInBandLines } from '../dsp/warp/removeInBandLines.js';
 import { oppositeLaw, type SpeedLaw } from '../dsp/warp/SpeedLaw.js';
@@ -115,7 +116,9 @@ function measureLaw(
     (left, removed) => removeInBandLines(left, removed, transformOf),
     tapered,
   );
-  const lines = foldedLines(transform.forward(law.warped, rest), law).filter(({ ratio }) => ratio > leastKeptRatio);
+  const lines = foldedLines(transform.forward(law.warped, rest), law)
+    .filter(({ ratio }) => ratio > leastKeptRatio)
+    .filter((line) => !others.some((other) => followsOtherLaw({ law, ...line }, other.law)));
   const chanceRatio = lines.length === 0 ? 0 : highestByChance(rest, oppositeLaw(law), transform);
   return {
     mode: speed === null ? 'blind' : 'speedChannel',

@@ -1,6 +1,7 @@
 import type { ChirpVote } from './chirpVotes.js';
 import { lawFromVotes } from './lawFromVotes.js';
 import { type PolishedRate, polishRate } from './polishRate.js';
+import { evenChange, proportionalChange, type RateFamily } from './RateFamily.js';
 import { refineLaw, type Rung } from './refineLaw.js';
 import { sharpness } from './sharpness.js';
 import { linearLaw, type SpeedLaw } from './SpeedLaw.js';
@@ -22,6 +23,8 @@ const leastBins = 3;
 /** Log-likelihood ratio from which a law of free shape is worth refining. */
 const leastGainOfPath = 30;
 const leastReach = 0.003;
+/** Below this rate even and proportional change are the same. */
+const alikeRate = 0.1;
 const leastLineRatio = 20;
 /** A law has to gather the spectrum this much better than steady speed does, and better than noise can. */
 const leastGain = 1.5;
@@ -72,11 +75,18 @@ export function findLaws(tapered: Float64Array, votes: ChirpVote[], transformOf:
     const sharp = sharpnessOf(law);
     if (sharp >= least) found.push({ law, sharpness: sharp, steadySharpness });
   };
-  for (const candidate of voteForRates(votes, length, mostLaws)) {
-    if (candidate.score < leastScore || Math.abs(candidate.rho) * length < leastBins) continue;
-    const rho = polishBest(tapered, candidate)?.rho;
-    if (rho === undefined || sharpnessOf(linearLaw(rho, length)) < least) continue;
-    consider(linearLaw(polishHigh(tapered, rho, sharpnessOf, transformOf), length), upperRungs);
+  const candidates = voteForRates(evenChange, votes, length, mostLaws).map((rate) => ({ family: evenChange, rate }));
+  if (candidates.some(({ rate }) => Math.abs(rate.rate) > alikeRate)) {
+    const others = voteForRates(proportionalChange, votes, length, 1);
+    candidates.push(...others.map((rate) => ({ family: proportionalChange, rate })));
+  }
+  for (const { family, rate } of candidates) {
+    if (rate.score < leastScore || Math.abs(rate.rate) * length < leastBins) continue;
+    const polished = polishBest(tapered, family, rate);
+    if (polished === null || Math.abs(polished.rate) > family.largest) continue;
+    const start = family.lawOf(polished.rate, length);
+    if (sharpnessOf(start) < least) continue;
+    consider(polishHigh(tapered, family, polished.rate, sharpnessOf, transformOf), upperRungs);
   }
   const isClear = (): boolean => found.some((law) => law.sharpness > clearGain * steadySharpness);
   if (!isClear() && steadySharpness > sharpnessOfLines) consider(steady, ladder);
@@ -112,28 +122,35 @@ function isSameLaw(a: SpeedLaw, b: SpeedLaw): boolean {
 }
 
 /** Of the lines that support a candidate the one that fixes its slope best. */
-function polishBest(tapered: Float64Array, { rho, reach, lines }: RateCandidate): PolishedRate | null {
+function polishBest(
+  tapered: Float64Array,
+  family: RateFamily,
+  { rate, reach, lines }: RateCandidate,
+): PolishedRate | null {
   const all = lines
-    .map((nu) => polishRate(tapered, rho, nu, Math.max(reach, leastReach)))
+    .map((nu) => polishRate(tapered, family, { rate, nu, reach: Math.max(reach, leastReach) }))
     .filter(({ ratio }) => ratio > leastLineRatio);
   all.sort((a, b) => b.ratio * b.nu ** 2 - a.ratio * a.nu ** 2);
   return all[0] ?? null;
 }
 
-/** The slope once more, from the strongest high line that the law gathers below fs/2. */
+/** The law once more, from the strongest high line that it gathers below fs/2; the sharper of both. */
 function polishHigh(
   tapered: Float64Array,
-  rho: number,
+  family: RateFamily,
+  rate: number,
   sharpnessOf: (law: SpeedLaw) => number,
   transformOf: TransformOf,
-): number {
+): SpeedLaw {
   const { length } = tapered;
-  const to = Math.floor(length / 2 / (1 + Math.abs(rho)));
-  const spectrum = transformOf(Math.floor(countedBand * length)).forward(linearLaw(rho, length).warped, tapered);
+  const law = family.lawOf(rate, length);
+  const to = Math.floor(length / 2 / Math.max(law.speedAt(0), law.speedAt(1)));
+  const spectrum = transformOf(Math.floor(countedBand * length)).forward(law.warped, tapered);
   const lines = warpedLines(binPowers(spectrum), firstBin, to, inBandRatio);
   lines.sort((a, b) => b.power * b.bin ** 2 - a.power * a.bin ** 2);
   const [line] = lines;
-  if (line === undefined) return rho;
-  const polished = polishRate(tapered, rho, line.bin / length, 5e-4).rho;
-  return sharpnessOf(linearLaw(polished, length)) > sharpnessOf(linearLaw(rho, length)) ? polished : rho;
+  if (line === undefined) return law;
+  const polished = polishRate(tapered, family, { rate, nu: line.bin / length, reach: 5e-4 }).rate;
+  const other = family.lawOf(polished, length);
+  return sharpnessOf(other) > sharpnessOf(law) ? other : law;
 }

@@ -1,8 +1,9 @@
 import type { ChirpVote } from './chirpVotes.js';
+import type { RateFamily } from './RateFamily.js';
 
 export interface RateCandidate {
-  /** Relative slope ρ of the law s(τ) = 1 + ρ·τ, τ = −1 … 1 over the capture. */
-  rho: number;
+  /** Parameter of the family. */
+  rate: number;
   /** Half the width over which the support is within a factor e⁸ of its best. */
   reach: number;
   /** Frequencies at mid stretch, cycles a sample, where most of the supporting votes gather. */
@@ -11,7 +12,6 @@ export interface RateCandidate {
   score: number;
 }
 
-const largestRho = 0.96;
 /** Shares of a cell's votes that may follow one law: each cell takes the one that suits it best, or none. */
 const shares = [0.02, 0.1, 0.3, 0.7];
 /** Frames overlap by half, which halves what a vote says. */
@@ -34,58 +34,61 @@ interface RelativeVote {
   error: number;
   /** Density of the law's slope over that of this slope among peaks of plain noise, at no distance. */
   peakRatio: number;
-  rho: number;
-  rhoError: number;
+  rate: number;
+  rateError: number;
 }
 
 /** The rates with most support, best first; each next one from the votes that the ones before leave unexplained. */
-export function voteForRates(chirps: ChirpVote[], length: number, most: number): RateCandidate[] {
-  let cells = groupVotes(chirps, length);
+export function voteForRates(family: RateFamily, chirps: ChirpVote[], length: number, most: number): RateCandidate[] {
+  let cells = groupVotes(family, chirps, length);
   const found: RateCandidate[] = [];
   while (found.length < most) {
-    const best = bestRate(cells);
+    const best = bestRate(family, cells);
     if (best.score < leastScore) break;
     const distance = (vote: RelativeVote): number =>
-      Math.abs(vote.slope - best.rho / (1 + best.rho * vote.tau)) / vote.error;
+      Math.abs(vote.slope - family.slopeAt(best.rate, vote.tau)) / vote.error;
     const supporting = cells.flatMap((cell) => cell.filter((vote) => distance(vote) < 3));
-    found.push({ ...best, lines: gatherLines(supporting, best.rho) });
+    found.push({ ...best, lines: gatherLines(family, supporting, best.rate) });
     cells = cells.map((cell) => cell.filter((vote) => distance(vote) > farAway));
   }
   return found;
 }
 
-function bestRate(cells: RelativeVote[][]): Rate {
+function bestRate(family: RateFamily, cells: RelativeVote[][]): Rate {
   const starts = cells.flatMap((cell) =>
     cell
-      .filter(({ rho, rhoError }) => Math.abs(rho) < largestRho && rhoError < 0.3)
-      .sort((a, b) => a.rhoError - b.rhoError)
+      .filter(({ rate, rateError }) => Math.abs(rate) < family.largest && rateError < 0.3)
+      .sort((a, b) => a.rateError - b.rateError)
       .slice(0, startsPerCell),
   );
-  let best: Rate = { rho: 0, reach: 0, score: rateScore(cells, 0) };
-  const consider = (rho: number): void => {
-    if (Math.abs(rho) > largestRho) return;
-    const score = rateScore(cells, rho);
-    if (score > best.score) best = { rho, reach: 0, score };
+  let best: Rate = { rate: 0, reach: 0, score: rateScore(family, cells, 0) };
+  const consider = (rate: number): void => {
+    if (Math.abs(rate) > family.largest) return;
+    const score = rateScore(family, cells, rate);
+    if (score > best.score) best = { rate, reach: 0, score };
   };
-  for (const { rho } of starts) consider(rho);
+  for (const { rate } of starts) consider(rate);
   for (let step = 0.004; step > 1e-6; step /= 2) {
-    const { rho } = best;
-    consider(rho - step);
-    consider(rho + step);
+    const { rate } = best;
+    consider(rate - step);
+    consider(rate + step);
   }
-  return { ...best, reach: Math.max(reachTo(cells, best, 1), reachTo(cells, best, -1)) };
+  return { ...best, reach: Math.max(reachTo(family, cells, best, 1), reachTo(family, cells, best, -1)) };
 }
 
-function reachTo(cells: RelativeVote[][], { rho, score }: Rate, direction: 1 | -1): number {
+function reachTo(family: RateFamily, cells: RelativeVote[][], { rate, score }: Rate, direction: 1 | -1): number {
   let step = 1e-5;
-  while (step < 0.1 && rateScore(cells, rho + direction * step) > score - reachDrop) step *= 1.6;
+  while (step < 0.1 && rateScore(family, cells, rate + direction * step) > score - reachDrop) step *= 1.6;
   return step;
 }
 
 /** Strongest gatherings of the votes' frequencies at mid stretch. */
-function gatherLines(votes: RelativeVote[], rho: number): number[] {
+function gatherLines(family: RateFamily, votes: RelativeVote[], rate: number): number[] {
   const places = votes
-    .map(({ frequency, tau, error }) => ({ nu: frequency / (1 + rho * tau), weight: 1 / (error * frequency) }))
+    .map(({ frequency, tau, error }) => ({
+      nu: frequency / family.speedAt(rate, tau),
+      weight: 1 / (error * frequency),
+    }))
     .sort((a, b) => a.nu - b.nu);
   const lines: number[] = [];
   let left = places;
@@ -104,14 +107,14 @@ function gatherLines(votes: RelativeVote[], rho: number): number[] {
   return lines;
 }
 
-function groupVotes(votes: ChirpVote[], length: number): RelativeVote[][] {
+function groupVotes(family: RateFamily, votes: ChirpVote[], length: number): RelativeVote[][] {
   const half = length / 2;
   const cells = new Map<number, RelativeVote[]>();
   for (const { at, frequency, slope, slopeError, noiseSpread, cell } of votes) {
     const scale = half / frequency;
     const tau = (at - half) / half;
     const relative = slope * scale;
-    const bottom = 1 - relative * tau;
+    const own = family.rateFrom(relative, tau);
     const z = slope / noiseSpread;
     const vote = {
       tau,
@@ -119,8 +122,8 @@ function groupVotes(votes: ChirpVote[], length: number): RelativeVote[][] {
       slope: relative,
       error: slopeError * scale,
       peakRatio: ((noiseSpread / slopeError) * (1 + (z * z) / 2) ** 1.5) / (0.35 * 2.5066),
-      rho: relative / bottom,
-      rhoError: bottom > 0.02 ? (slopeError * scale) / (bottom * bottom) : Infinity,
+      rate: own?.rate ?? 0,
+      rateError: own === null ? Infinity : slopeError * scale * own.stretch,
     };
     const list = cells.get(cell);
     if (list === undefined) cells.set(cell, [vote]);
@@ -129,14 +132,14 @@ function groupVotes(votes: ChirpVote[], length: number): RelativeVote[][] {
   return [...cells.values()];
 }
 
-function rateScore(cells: RelativeVote[][], rho: number): number {
+function rateScore(family: RateFamily, cells: RelativeVote[][], rate: number): number {
   let total = 0;
   const sums = new Float64Array(shares.length);
   for (const cell of cells) {
     sums.fill(0);
     let far = 0;
     for (const { slope, tau, error, peakRatio } of cell) {
-      const z = (slope - rho / (1 + rho * tau)) / error;
+      const z = (slope - family.slopeAt(rate, tau)) / error;
       if (z > farAway || z < -farAway) {
         far++;
         continue;
