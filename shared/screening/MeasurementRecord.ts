@@ -258,6 +258,20 @@ export interface CompanionMeasurement {
   moves?: ToneMove[];
   /** Folded energy by coherence with what the companion carries beyond this capture's fs/2; null where not aligned. */
   folded?: FoldedBand[] | null;
+  /** Densities of both, where the companion is much faster and they can't be aligned. */
+  densities?: DensityPair | null;
+}
+
+/** Mean densities in equal cells of 0 … fs/2, dB. */
+export interface DensityPair {
+  cellHz: number;
+  /** Zones of this capture that the companion shows whole. */
+  zones: number;
+  ownDb: number[];
+  /** The companion's at the same place. */
+  sameDb: number[];
+  /** The companion's summed over all places that would fold there. */
+  foldedDb: number[];
 }
 
 /** A tenth of 0 … fs/2 and what each zone of the companion accounts for in it. */

@@ -2,6 +2,7 @@ import type { Finding } from '../schemas/screening.js';
 import type { Thresholds } from '../schemas/thresholds.js';
 import type { FoldEvidence } from './FoldEvidence.js';
 import { formatHz } from './formatNumber.js';
+import { isMaterialShare, judgeDensities } from './judgeDensities.js';
 import { judgeFoldedShare } from './judgeFoldedShare.js';
 import { judgeMoves } from './judgeMoves.js';
 import type { MeasurementRecord } from './MeasurementRecord.js';
@@ -41,11 +42,20 @@ export function judgeCompanion(record: MeasurementRecord, thresholds: Thresholds
   const share =
     isAligned && companion.folded ? judgeFoldedShare(companion, companion.folded, thresholds.confidence) : null;
   const isOneEvent = isAligned || (judgedMoves !== null && judgedMoves.eventChance < largestEventChance);
+  const predicted = !isAligned && companion.densities ? judgeDensities(companion, companion.densities) : null;
   if (!isOneEvent) {
     const reason = 'the two captures have neither a course over time nor enough tones in common';
-    return { ...none, findings: [unusable(companion.name, reason, alignment?.agreement ?? 0, judged.length)] };
+    const notUsed = unusable(companion.name, reason, alignment?.agreement ?? 0, judged.length);
+    // Noise alone may have been recorded twice: then only the reader knows.
+    return { ...none, findings: predicted === null || judged.length > 0 ? [notUsed] : [notUsed, predicted.finding] };
   }
-  if (share !== null) findings.push(share.finding);
+  // Moved tones say more than a share that doesn't stand out of chance.
+  if (share !== null && (share.shareDb !== null || count('moved') === 0)) findings.push(share.finding);
+  if (predicted !== null) {
+    const isSure = isMaterialShare(predicted) && predicted.confidence >= thresholds.confidence;
+    findings.push(isSure ? { ...predicted.finding, severity: 'fold' } : predicted.finding);
+    if (isSure) return { tones: [], findings, logRatio: largestRatio / 2, shownConfidence: predicted.confidence };
+  }
   const isShown = share?.finding.severity === 'fold';
   if (isShown) {
     return { tones: [], findings, logRatio: largestRatio, shownConfidence: share?.confidence ?? 0 };

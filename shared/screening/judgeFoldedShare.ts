@@ -75,7 +75,7 @@ export function judgeFoldedShare(
   });
   const text =
     shareDb === null
-      ? `The companion ${companion.name} at ${formatHz(companion.sampleRateHz)} shows no folding: nothing that it carries beyond this capture's folding frequency is found here, down to ${formatDb(unnoticedDb)} of the power.`
+      ? `Nothing that the companion ${companion.name} at ${formatHz(companion.sampleRateHz)} carries beyond this capture's folding frequency is found here; ${unnoticedDb < materialShareDb ? 'it shows no folding, down to' : 'noise would hide it up to'} ${formatDb(unnoticedDb)} of the power.`
       : `At least ${formatPercent(10 ** (shareDb / 10))} of the power (${formatDb(shareDb)}) goes along with what the companion ${companion.name} carries beyond this capture's folding frequency: it is folded` +
         (worst === null
           ? '.'

@@ -49,17 +49,17 @@ export function addCompanion(
     const theirs = readExcerpt(other, otherRateHz, signal);
     const ours = readExcerpt(source, rateHz, signal);
     const records = others.map(({ record }) => record);
-    measurements.forEach(({ record }, channel) => {
+    measurements.forEach(({ record, spectra }, channel) => {
       signal?.throwIfAborted();
       const paired = pairedChannel(record, records, theirs);
       const samples = ours.channels[channel];
       const otherSamples = theirs.channels[paired];
-      const otherRecord = records[paired];
-      if (samples === undefined || otherSamples === undefined || otherRecord === undefined) return;
+      const otherMeasured = others[paired];
+      if (samples === undefined || otherSamples === undefined || otherMeasured === undefined) return;
       record.companion = measureCompanion(
         companion.name,
-        { record, samples, rateHz },
-        { record: otherRecord, samples: otherSamples, rateHz: otherRateHz },
+        { record, spectra, samples, rateHz },
+        { ...otherMeasured, samples: otherSamples, rateHz: otherRateHz },
         sheet,
       );
     });

@@ -1,8 +1,15 @@
 import type { AcquisitionSheet } from '../../shared/schemas/acquisitionSheet.js';
-import type { CompanionMeasurement, FoldedBand, MeasurementRecord } from '../../shared/screening/MeasurementRecord.js';
+import type {
+  CompanionMeasurement,
+  DensityPair,
+  FoldedBand,
+  MeasurementRecord,
+} from '../../shared/screening/MeasurementRecord.js';
+import type { ChannelMeasurement } from '../measure/ChannelMeasurement.js';
 import { alignCaptures } from './alignCaptures.js';
 import { foldedCoherence } from './foldedCoherence.js';
 import { type Clock, measureMoves, type Recorded } from './measureMoves.js';
+import { pooledDensities } from './pooledDensities.js';
 import type { Excerpt } from './readExcerpt.js';
 import { zoneCells } from './ZoneCells.js';
 
@@ -15,11 +22,15 @@ const defaultReach = 2;
 const alignedChance = 1e-4;
 const leastAgreement = 0.15;
 
+/** A companion at about twice the rate or more is taken to show each frequency at its own place. */
+const fastRatio = 1.9;
+const mostZones = 4;
+
 /** Compares one channel of a capture with its companion's: the lag, and where each tone stands in the companion. */
 export function measureCompanion(
   name: string,
-  own: { record: MeasurementRecord; samples: Float64Array; rateHz: number },
-  other: { record: MeasurementRecord; samples: Float64Array; rateHz: number },
+  own: ChannelMeasurement & Recorded,
+  other: ChannelMeasurement & Recorded,
   sheet: AcquisitionSheet,
 ): CompanionMeasurement {
   const alignment = alignCaptures(own.samples, own.rateHz, other.samples, other.rateHz);
@@ -35,12 +46,17 @@ export function measureCompanion(
     alignment,
     moves: measureMoves(own, other, clock, own.record.tones, reachHz),
     folded: clock === null ? null : measureFolded(own, other, clock, reachHz),
+    densities: clock === null && other.rateHz >= fastRatio * own.rateHz ? measureDensities(own, other) : null,
   };
 }
 
-/** A companion at about twice the rate or more is taken to show each frequency at its own place. */
-const fastRatio = 1.9;
-const mostZones = 4;
+function measureDensities(
+  own: ChannelMeasurement & Recorded,
+  other: ChannelMeasurement & Recorded,
+): DensityPair | null {
+  const surveyOf = ({ spectra }: ChannelMeasurement) => spectra.find(({ kind }) => kind === 'survey');
+  return pooledDensities(surveyOf(own), own.rateHz, surveyOf(other), other.rateHz);
+}
 
 function measureFolded(own: Recorded, other: Recorded, clock: Clock, reachHz: number): FoldedBand[] | null {
   const isFast = other.rateHz >= fastRatio * own.rateHz;
