@@ -101,6 +101,19 @@ export const routes: RouteRecordRaw[] = [
   },
   { path: '/account', name: 'account', component: () => import('@/views/AccountView.vue'), meta: { title: 'Account' } },
   {
+    path: '/help',
+    name: 'help',
+    component: () => import('@/views/HelpView.vue'),
+    meta: { title: 'Help', isPublic: true },
+  },
+  {
+    path: '/help/:page',
+    name: 'helpPage',
+    component: () => import('@/views/HelpPageView.vue'),
+    props: true,
+    meta: { title: 'Help', isPublic: true },
+  },
+  {
     path: '/:path(.*)*',
     name: 'notFound',
     component: () => import('@/views/NotFoundView.vue'),

@@ -42,6 +42,9 @@ async function mainPages(): Promise<string[]> {
     '/admin/mail',
     '/demo/mail',
     '/account',
+    '/help',
+    '/help/clearTo',
+    '/help/no-such-page',
     '/no-such-page',
   ];
 }
@@ -66,7 +69,7 @@ describe.each([
       if (scrollsSideways) found[path] = [...(found[path] ?? []), 'the page scrolls sideways'];
     };
 
-    for (const path of ['/sign-in', '/forgot']) {
+    for (const path of ['/sign-in', '/forgot', '/help', '/help/foldedTone', '/help/thresholds']) {
       await page.goto(path);
       await examine(path);
     }

@@ -56,8 +56,8 @@ export function edgeOverTimeFigure(): HelpFigure {
 }
 
 export function clippedFigure(): HelpFigure {
-  const limit = 0.7;
-  const loud = (s: number): number => 1.5 * wave(s);
+  const limit = 0.6;
+  const loud = (s: number): number => 1.3 * wave(s);
   return {
     ...frame,
     title: 'Flat tops',
@@ -81,11 +81,7 @@ export function dropoutFigure(): HelpFigure {
     description:
       'Between the arrows the recording keeps one value far longer than the signal around it explains, then goes on elsewhere (the dashed line is what was lost).',
     shapes: [
-      line(
-        'quiet',
-        curve(fromS, toS, 40, wave),
-        true,
-      ),
+      line('quiet', curve(fromS, toS, 40, wave), true),
       line('signal', overTime(held)),
       { shape: 'arrow', role: 'caution', from: [fromS, -1.25], to: [fromS, -0.1] },
       { shape: 'arrow', role: 'caution', from: [toS, -1.25], to: [toS, -0.1] },
@@ -185,7 +181,12 @@ export function timeStampFigure(): HelpFigure {
     { role: 'signal', text: 'even', height: 1, at: places },
     { role: 'caution', text: 'jitter', height: 0.35, at: places.map((s) => s + 0.012 * noise()) },
     { role: 'caution', text: 'gap', height: -0.3, at: places.filter((s) => s < 0.4 || s > 0.6) },
-    { role: 'caution', text: 'repeated', height: -0.95, at: places.map((_, index) => 0.04 + 0.08 * Math.floor(index / 2)) },
+    {
+      role: 'caution',
+      text: 'repeated',
+      height: -0.95,
+      at: places.map((_, index) => 0.04 + 0.08 * Math.floor(index / 2)),
+    },
   ];
   return {
     ...frame,
@@ -302,20 +303,20 @@ export function triangleFigure(): HelpFigure {
       ]),
       {
         shape: 'area',
-        role: 'folded',
+        role: 'caution',
         points: [
           [0.25, 0.25],
           [1 / 3, 1 / 3],
           [0.5, 0],
         ],
       },
-      line('folded', [
+      line('caution', [
         [0.25, 0.25],
         [1 / 3, 1 / 3],
         [0.5, 0],
       ]),
       label('signal', [0.25, 0.1], 'inner', 'middle'),
-      label('folded', [0.4, 0.28], 'outer'),
+      label('caution', [0.4, 0.28], 'outer'),
     ],
   };
 }
