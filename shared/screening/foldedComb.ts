@@ -1,5 +1,6 @@
 import { type HarmonicFamily, matchSigmas, poissonTail, toneErrorHz } from './harmonicFamily.js';
 import type { ToneMeasurement } from './MeasurementRecord.js';
+import { type FundamentalTrack, fundamentalTrack, slopeAgrees } from './phaseSlope.js';
 
 export interface FoldedMatch {
   tone: number;
@@ -20,6 +21,8 @@ interface Match {
   trueHz: number;
   distanceHz: number;
   errorHz: number;
+  /** Chance that a tone wanders as this one is predicted to; null where none of the two wanders visibly. */
+  slopeChance: number | null;
 }
 
 /**
@@ -27,7 +30,9 @@ interface Match {
  * ±(m·fs mod f0): they are one prediction, of chance 2t/f0 for each comb tried, because a carrier with side-bands imitates a
  * comb exactly; t is how far the comb really lies off its predicted place, and what that is uncertain by. As many tones as were
  * found have to be unlikely by chance too: the weaker of both statements counts. A comb that falls on the family itself or on
- * its subharmonics shows nothing and is left out, and so is a tone in the skirt of a stronger member that wanders.
+ * its subharmonics shows nothing and is left out, and so is a tone in the skirt of a stronger member that wanders. Where the
+ * speed wanders visibly, the tones' phases have to follow it the predicted number of times, upside down in even zones: place
+ * and slope together leave side-bands no room.
  * @param free tones that nothing in band explains
  */
 export function foldedComb(
@@ -40,19 +45,28 @@ export function foldedComb(
 ): FoldedMatch[] {
   const spacingHz = family.fundamentalHz;
   const candidates = free.filter((index) => !isInSkirt(tones, index, family));
+  const track = fundamentalTrack(tones, family);
   const found: FoldedMatch[] = [];
   for (let fold = 1; fold <= highestFold; fold++) {
     for (const side of [-1, 1] as const) {
       const offset = ((((side * fold * sampleRateHz) % spacingHz) + spacingHz) % spacingHz) / spacingHz;
-      const { matches, expected, toleranceHz } = matchComb(tones, candidates, family, fold * sampleRateHz, side, binHz);
+      const { matches, expected, toleranceHz } = matchComb(
+        tones,
+        candidates,
+        { ...family, track },
+        fold * sampleRateHz,
+        side,
+        binHz,
+      );
       if (matches.length === 0) continue;
       const leastDistance = Math.max(1.5 * toleranceHz, binHz) / spacingHz;
       if (ownParts.some((part) => Math.abs(offset - part) < leastDistance)) continue;
       const asOneComb = (2 * combOffsetHz(matches, family.fundamentalErrorHz)) / spacingHz;
       const asMany = poissonTail(matches.length, expected);
       const chance = Math.min(1, Math.max(asOneComb, asMany) * combWeight(fold) * familiesTried);
-      for (const { tone, multiple, trueHz } of matches) {
-        found.push({ tone, multiple, trueFrequencyHz: trueHz, chanceProbability: chance });
+      for (const { tone, multiple, trueHz, slopeChance } of matches) {
+        const both = chance * (slopeChance ?? 1);
+        found.push({ tone, multiple, trueFrequencyHz: trueHz, chanceProbability: both });
       }
     }
   }
@@ -62,7 +76,7 @@ export function foldedComb(
 function matchComb(
   tones: ToneMeasurement[],
   candidates: number[],
-  { fundamentalHz, fundamentalErrorHz, relativeWander }: HarmonicFamily,
+  { fundamentalHz, fundamentalErrorHz, relativeWander, track }: HarmonicFamily & { track: FundamentalTrack | null },
   centreHz: number,
   side: -1 | 1,
   binHz: number,
@@ -79,6 +93,8 @@ function matchComb(
     expected += Math.min(1, (2 * toleranceHz) / fundamentalHz);
     const distanceHz = placeHz - multiple * fundamentalHz;
     if (toleranceHz > 0.15 * fundamentalHz || Math.abs(distanceHz) > toleranceHz) continue;
+    const slope = slopeAgrees(tone, track, side * multiple);
+    if (slope?.agrees === false) continue;
     tolerances.push(toleranceHz);
     matches.push({
       tone: index,
@@ -86,6 +102,7 @@ function matchComb(
       trueHz: multiple * fundamentalHz,
       distanceHz,
       errorHz: Math.hypot(tone.boundHz, tone.wanderHz, relativeWander * placeHz, leastErrorBins * binHz),
+      slopeChance: slope?.chance ?? null,
     });
   }
   return { matches, expected, toleranceHz: tolerances.sort((a, b) => a - b)[tolerances.length >> 1] ?? 0 };

@@ -3,6 +3,7 @@ import type { Finding, Tone } from '../schemas/screening.js';
 import type { Thresholds } from '../schemas/thresholds.js';
 import type { FoldEvidence } from './FoldEvidence.js';
 import { aliasHz, candidatesHz, zoneOf } from './foldArithmetic.js';
+import { explainDistortion } from './explainDistortion.js';
 import { explainSideBands } from './explainSideBands.js';
 import { foldedComb, type FoldedMatch, refineFamily } from './foldedComb.js';
 import { foldedToneFinding } from './foldedToneFinding.js';
@@ -47,6 +48,7 @@ export function judgeTones(record: MeasurementRecord, thresholds: Thresholds, sh
   explainFamilies(tones, measured, statedFundamentals(sheet, sampleRateHz), sampleRateHz, binHz);
   explainKnownSources(tones, measured, sheet, sampleRateHz, binHz);
   explainSideBands(tones, measured, binHz);
+  const distortion = explainDistortion(tones, measured, record, sampleRateHz, binHz);
   const folded = tones.filter(
     (tone) => tone.explanation.startsWith('folded') || tone.explanation === 'movedBetweenRates',
   );
@@ -68,7 +70,12 @@ export function judgeTones(record: MeasurementRecord, thresholds: Thresholds, sh
     .filter((tone) => tone.confidence >= thresholds.confidence)
     .filter((tone) => tone.levelDb > totalDb + labelledShareDb && tone.frequencyHz < (labelledBand * sampleRateHz) / 2)
     .reduce((best, tone) => Math.max(best, tone.confidence), 0);
-  return { tones, findings: [...findings, ...sourcesAtFold(sheet, sampleRateHz)], logRatio, shownConfidence };
+  return {
+    tones,
+    findings: [...findings, ...distortion, ...sourcesAtFold(sheet, sampleRateHz)],
+    logRatio,
+    shownConfidence,
+  };
 }
 
 function statedFundamentals(
