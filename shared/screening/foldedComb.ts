@@ -1,4 +1,11 @@
-import { type HarmonicFamily, matchSigmas, poissonTail, toneErrorHz } from './harmonicFamily.js';
+import {
+  type HarmonicFamily,
+  matchSigmas,
+  ownWanderHz,
+  poissonTail,
+  sharedWanderHz,
+  toneErrorHz,
+} from './harmonicFamily.js';
 import type { ToneMeasurement } from './MeasurementRecord.js';
 import { type FundamentalTrack, fundamentalTrack, slopeAgrees } from './phaseSlope.js';
 
@@ -50,17 +57,13 @@ export function foldedComb(
   for (let fold = 1; fold <= highestFold; fold++) {
     for (const side of [-1, 1] as const) {
       const offset = ((((side * fold * sampleRateHz) % spacingHz) + spacingHz) % spacingHz) / spacingHz;
-      const { matches, expected, toleranceHz } = matchComb(
-        tones,
-        candidates,
-        { ...family, track },
-        fold * sampleRateHz,
-        side,
-        binHz,
-      );
-      if (matches.length === 0) continue;
+      const comb = matchComb(tones, candidates, { ...family, track }, fold * sampleRateHz, side, binHz);
+      const { expected, toleranceHz } = comb;
       const leastDistance = Math.max(1.5 * toleranceHz, binHz) / spacingHz;
-      if (ownParts.some((part) => Math.abs(offset - part) < leastDistance)) continue;
+      const isOnOwn = ownParts.some((part) => Math.abs(offset - part) < leastDistance);
+      // What stands where the family or its subharmonics do is told from them by the way it wanders alone.
+      const matches = isOnOwn ? comb.matches.filter(({ slopeChance }) => slopeChance !== null) : comb.matches;
+      if (matches.length === 0) continue;
       const asOneComb = (2 * combOffsetHz(matches, family.fundamentalErrorHz)) / spacingHz;
       const asMany = poissonTail(matches.length, expected);
       const chance = Math.min(1, Math.max(asOneComb, asMany) * combWeight(fold) * familiesTried);
@@ -89,7 +92,12 @@ function matchComb(
     const placeHz = centreHz + side * tone.frequencyHz;
     const multiple = Math.round(placeHz / fundamentalHz);
     const toleranceHz =
-      matchSigmas * Math.hypot(toneErrorHz(tone, binHz), relativeWander * placeHz, multiple * fundamentalErrorHz);
+      matchSigmas *
+      Math.hypot(
+        toneErrorHz(tone, binHz),
+        sharedWanderHz(tone, relativeWander * placeHz),
+        multiple * fundamentalErrorHz,
+      );
     expected += Math.min(1, (2 * toleranceHz) / fundamentalHz);
     const distanceHz = placeHz - multiple * fundamentalHz;
     if (toleranceHz > 0.15 * fundamentalHz || Math.abs(distanceHz) > toleranceHz) continue;
@@ -101,7 +109,12 @@ function matchComb(
       multiple,
       trueHz: multiple * fundamentalHz,
       distanceHz,
-      errorHz: Math.hypot(tone.boundHz, tone.wanderHz, relativeWander * placeHz, leastErrorBins * binHz),
+      errorHz: Math.hypot(
+        tone.boundHz,
+        ownWanderHz(tone),
+        sharedWanderHz(tone, relativeWander * placeHz),
+        leastErrorBins * binHz,
+      ),
       slopeChance: slope?.chance ?? null,
     });
   }
@@ -122,7 +135,12 @@ export function refineFamily(
     const tone = tones[index] as ToneMeasurement;
     const fold = Math.round(trueFrequencyHz / sampleRateHz) * sampleRateHz;
     const placeHz = fold + Math.sign(trueFrequencyHz - fold) * tone.frequencyHz;
-    const errorHz = Math.hypot(tone.boundHz, tone.wanderHz, family.relativeWander * placeHz, 1e-9 * placeHz);
+    const errorHz = Math.hypot(
+      tone.boundHz,
+      ownWanderHz(tone),
+      sharedWanderHz(tone, family.relativeWander * placeHz),
+      1e-9 * placeHz,
+    );
     const w = (multiple / errorHz) ** 2;
     weight += w;
     weighted += (w * placeHz) / multiple;

@@ -19,8 +19,16 @@ const mostMultiples = 400;
 const leastBlindMembers = 4;
 const largestBlindChance = 1e-4;
 
+/** How far a tone may lie off a multiple of another one's: a mean frequency from its phase track wanders with the other's. */
+export const ownWanderHz = ({ phaseTrack, wanderHz }: ToneMeasurement): number =>
+  phaseTrack === undefined ? wanderHz : 0;
+
+/** What a speed that wanders adds, unless the tone's track makes it a mean over the same stretch as the others'. */
+export const sharedWanderHz = ({ phaseTrack }: ToneMeasurement, expectedHz: number): number =>
+  phaseTrack === undefined ? expectedHz : 0;
+
 export const toneErrorHz = (tone: ToneMeasurement, binHz: number): number =>
-  Math.hypot(Math.max(tone.boundHz, tone.wanderHz), 0.1 * binHz);
+  Math.hypot(Math.max(tone.boundHz, ownWanderHz(tone)), 0.1 * binHz);
 
 /** One pass through the tones in rising order; see followFamily. */
 function followOnce(
@@ -48,7 +56,7 @@ function followOnce(
       const { tone, index } = order[next] as { tone: ToneMeasurement; index: number };
       if (Math.round(tone.frequencyHz / fundamentalHz) !== multiple) break;
       if (multiple < 1 || multiple > mostMultiples) continue;
-      const toneError = Math.hypot(toneErrorHz(tone, binHz), relativeWander * tone.frequencyHz);
+      const toneError = Math.hypot(toneErrorHz(tone, binHz), sharedWanderHz(tone, relativeWander * tone.frequencyHz));
       const toleranceHz = matchSigmas * Math.hypot(toneError, multiple * errorHz);
       expected += Math.min(1, (2 * toleranceHz) / fundamentalHz);
       const distanceHz = Math.abs(tone.frequencyHz - multiple * fundamentalHz);

@@ -5,6 +5,8 @@ import type { ToneDemodulator } from './ToneDemodulator.js';
 export interface PhaseTrack {
   /** Phase against a steady tone of the fitted frequency, rad, in equal parts of the stretch; straight line taken out. */
   phasesRad: number[];
+  /** What the straight line adds to the fitted frequency, rad a sample: with it the frequency is the mean over the stretch. */
+  meanOffset: number;
   /** Standard deviation of one of them in white noise. */
   errorRad: number;
   /** Mean square phase over what noise alone gives: 1 for a tone that does not wander. */
@@ -48,16 +50,17 @@ export function phaseTrack(demodulator: ToneDemodulator, tone: RefinedTone, nois
   if (!(weakest > leastPower * perPoint * noisePower)) return null;
   if (phases.some((phase, point) => point > 0 && Math.abs(phase - (phases[point - 1] as number)) > largestStepRad))
     return null;
-  const phasesRad = withoutLine(phases);
+  const { rest: phasesRad, slope } = withoutLine(phases);
   const seen = phasesRad.reduce((sum, phase) => sum + phase * phase, 0) / (points - 2);
-  return { phasesRad, errorRad: Math.sqrt(meanSquare), excess: seen / Math.max(meanSquare, 1e-300) };
+  const meanOffset = slope / (perPoint * demodulator.blockFrames);
+  return { phasesRad, meanOffset, errorRad: Math.sqrt(meanSquare), excess: seen / Math.max(meanSquare, 1e-300) };
 }
 
-function withoutLine(values: number[]): number[] {
+function withoutLine(values: number[]): { rest: number[]; slope: number } {
   const middle = (values.length - 1) / 2;
   const mean = values.reduce((sum, value) => sum + value, 0) / values.length;
   const slope =
     values.reduce((sum, value, n) => sum + value * (n - middle), 0) /
     values.reduce((sum, _, n) => sum + (n - middle) ** 2, 0);
-  return values.map((value, n) => value - mean - slope * (n - middle));
+  return { rest: values.map((value, n) => value - mean - slope * (n - middle)), slope };
 }

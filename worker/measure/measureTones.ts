@@ -52,7 +52,12 @@ export function measureTones(
   });
   // Tracks are of use only together: one that shows a wander, and others to set against it.
   if (measured.some(({ track }) => track !== null && track.excess > leastExcess)) {
-    for (const { result, track } of measured) if (track !== null) result.phaseTrack = roundedTrack(track);
+    for (const { result, track } of measured) {
+      if (track === null) continue;
+      result.phaseTrack = roundedTrack(track);
+      // The highest peak of a tone that wanders lies anywhere in its spread; its mean frequency is proportional in all members.
+      if (track.excess > leastExcess) result.frequencyHz += (track.meanOffset * sampleRateHz) / (2 * Math.PI);
+    }
   }
   return measured.map(({ result }) => result);
 }
