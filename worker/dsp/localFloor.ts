@@ -65,8 +65,8 @@ export function strongestAboveFloor(
 }
 
 /** A peak half-way between the coarsest grid points shows at least this share of its height. */
-const seenShare = 0.75;
-const mostPlaces = 12;
+export const seenShare = 0.75;
+const mostPlaces = 6;
 
 /** Local maxima within what the grid may hide of the highest, the highest first. */
 export function nearlyHighest(power: Float64Array): number[] {

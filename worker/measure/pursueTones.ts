@@ -1,7 +1,7 @@
 import type { IrregularTone } from '../../shared/screening/MeasurementRecord.js';
 import { decibels } from '../dsp/decibels.js';
 import { createLombScargle } from '../dsp/lombScargle.js';
-import { localFloor, nearlyHighest, strongestAboveFloor } from '../dsp/localFloor.js';
+import { localFloor, nearlyHighest, seenShare, strongestAboveFloor } from '../dsp/localFloor.js';
 import { type ExtremeValueLaw, logChanceOfPeak, shuffledMaxima } from '../dsp/shuffledMaxima.js';
 import { type SinusoidFit, sinusoidFit, sinusoidModel } from '../dsp/sinusoidFit.js';
 import type { IrregularSearch } from './irregularReach.js';
@@ -13,6 +13,11 @@ export interface PursuedTones {
   residual: Float64Array;
 }
 
+type Rival = Required<Pick<IrregularTone, 'rivalHz' | 'rivalLogRatio'>>;
+type Found = SinusoidFit & { ratios: number[]; rivals: Rival[] };
+
+/** Rivals are tried where the samples are less likely by no more than this, in nats per sample. */
+const triedShare = 0.05;
 const mostTones = 16;
 const leastLogChance = Math.log(1e-3);
 /** A tone found once more within this many 1/span of a stronger one is that one's unsteadiness. */
@@ -40,7 +45,7 @@ export function createTonePursuit(
     return { tones, falseAlarm: law, residual: all.residual };
   };
 
-  function pursue(values: Float64Array): SinusoidFit & { ratios: number[] } {
+  function pursue(values: Float64Array): Found {
     const [fitValues, heldValues, heldTimes] = [part(values, false), part(values, true), part(timesS, true)];
     const ratios: number[] = [];
     let fit = sinusoidFit(fitted, fitValues, []);
@@ -73,25 +78,27 @@ export function createTonePursuit(
     return best.frequencyHz;
   }
 
-  /** With all tones found, one taken for another by the window's pattern may show: then the better one takes its place. */
-  function swapRivals(start: SinusoidFit, fitValues: Float64Array): SinusoidFit {
+  /**
+   * With all tones found, one taken for another by the window's pattern may show: then the better one takes its place.
+   * Rivals far less likely than the tone are not tried.
+   */
+  function swapRivals(start: SinusoidFit, fitValues: Float64Array): SinusoidFit & { rivals: Rival[] } {
     let fit = start;
-    for (let index = 0; index < start.frequenciesHz.length; index++) {
-      const { rivalHz } = rivalOf(fit, index);
-      if (rivalHz === null) continue;
-      const swapped = fit.frequenciesHz.with(index, rivalHz);
+    let rivals = start.frequenciesHz.map((_, index) => rivalOf(start, index));
+    let hasSwapped = false;
+    rivals.forEach(({ rivalHz, rivalLogRatio }, index) => {
+      if (rivalHz === null || rivalLogRatio === null || rivalLogRatio > triedShare * fitted.length) return;
+      const swapped = fit.frequenciesHz.map((hz, other) => (other === index ? rivalHz : hz));
       const next = sinusoidFit(fitted, fitValues, swapped, polishing);
-      if (meanSquare(next.residual) < meanSquare(fit.residual)) fit = next;
-    }
-    return fit;
+      if (!(meanSquare(next.residual) < meanSquare(fit.residual))) return;
+      fit = next;
+      hasSwapped = true;
+    });
+    if (hasSwapped) rivals = fit.frequenciesHz.map((_, index) => rivalOf(fit, index));
+    return { ...fit, rivals };
   }
 
-  function describe(
-    found: SinusoidFit & { ratios: number[] },
-    all: SinusoidFit,
-    values: Float64Array,
-    law: ExtremeValueLaw,
-  ): IrregularTone[] {
+  function describe(found: Found, all: SinusoidFit, values: Float64Array, law: ExtremeValueLaw): IrregularTone[] {
     const floor = localFloor(periodogram(found.residual));
     const heldTimes = part(timesS, true);
     const heldResidual = less(part(values, true), sinusoidModel(heldTimes, found));
@@ -119,18 +126,21 @@ export function createTonePursuit(
       if (isPartOfAnother || !(heldOutGainDb > 0) || !(frequencyHz > 0)) return [];
       return {
         frequencyHz,
-        uncertaintyHz: (all.spreadHz[index] as number) * Math.sqrt(noise * Math.max(0.1, colour)),
+        uncertaintyHz:
+          (all.spreadHz[index] as number) > 0
+            ? (all.spreadHz[index] as number) * Math.sqrt(noise * Math.max(0.1, colour))
+            : 1 / search.spanS,
         levelDb: decibels(tonePower),
         standsOutDb: decibels(ratio),
         logFalseAlarm: Math.max(-1e6, logChanceOfPeak(ratio, law)),
         heldOutGainDb,
-        ...rivalOf(found, index),
+        ...(found.rivals[index] as Rival),
       };
     });
   }
 
   /** The best other frequency in the tone's place, and how much less likely it makes the samples (natural logarithm). */
-  function rivalOf(found: SinusoidFit, index: number): Pick<IrregularTone, 'rivalHz' | 'rivalLogRatio'> {
+  function rivalOf(found: SinusoidFit, index: number): Rival {
     const tone = sinusoidModel(fitted, found, index);
     const target = found.residual.map((value, n) => value + (tone[n] as number));
     const power = periodogram(target);
@@ -140,12 +150,15 @@ export function createTonePursuit(
     );
     const places = nearlyHighest(far);
     if (places.length === 0) return { rivalHz: null, rivalLogRatio: null };
-    const rival = sinusoidFit(fitted, target, [bestOffGrid(target, places)]);
-    const ratio = meanSquare(rival.residual) / Math.max(meanSquare(found.residual), 1e-300);
-    return {
-      rivalHz: rival.frequenciesHz[0] as number,
-      rivalLogRatio: Math.max(0, (fitted.length / 2) * Math.log(Math.max(ratio, 1e-300))),
-    };
+    const left = meanSquare(found.residual);
+    const before = meanSquare(target);
+    const gridShare = (far[places[0] as number] as number) / seenShare;
+    // A rival that explains little is no danger, wherever exactly it lies between the grid's points.
+    const isWeak = gridShare < 0.7 * (1 - left / before);
+    const rivalHz = isWeak ? ((places[0] as number) + 1) * search.stepHz : bestOffGrid(target, places);
+    const rivalLeft = isWeak ? before * (1 - gridShare) : meanSquare(sinusoidFit(fitted, target, [rivalHz]).residual);
+    const logRatio = (fitted.length / 2) * Math.log(Math.max(rivalLeft, 1e-300) / Math.max(left, 1e-300));
+    return { rivalHz, rivalLogRatio: Math.max(0, logRatio) };
   }
 }
 
