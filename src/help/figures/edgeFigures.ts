@@ -113,7 +113,7 @@ export function overSampledFigure(): HelpFigure {
 
 export function resonanceFigure(): HelpFigure {
   const boundDb = filtered(halfHz);
-  const trueHz = 730;
+  const trueHz = 590;
   const landsHz = aliasHz(trueHz, rateHz);
   return {
     ...frame,

@@ -24,7 +24,7 @@ const foldLine = (atHz: number, text = 'fs/2'): FigureShape[] => [
     ],
     true,
   ),
-  label('quiet', [atHz + rateHz * 0.01, -12], text),
+  label('quiet', [atHz * 1.02, -12], text),
 ];
 const frame = {
   xLabel: 'frequency, Hz',
@@ -111,7 +111,7 @@ export function mirrorFigure(): HelpFigure {
       line('signal', curve(0, oldHalfHz, 60, drawn)),
       line('caution', curve(oldHalfHz, halfHz, 60, drawn)),
       ...foldLine(oldHalfHz, 'old fs/2'),
-      label('caution', [380, -30], 'images', 'middle'),
+      label('caution', [380, -14], 'images', 'middle'),
     ],
   };
 }

@@ -223,12 +223,12 @@ export function wrappedOrderFigure(): HelpFigure {
   return {
     ...trackFrame,
     title: 'An order beyond fs/2 runs the wrong way',
-    description: `The shaft’s speed rises and falls. Order 8 rises and falls with it. Order ${order} lies beyond fs/2 (dashed) and is found below it, falling when the speed rises.`,
+    description: `The shaft’s speed rises and falls. Order 6 rises and falls with it. Order ${order} lies beyond fs/2 (dashed) and is found below it, falling when the speed rises.`,
     shapes: [
       ...foldLine,
       line(
         'signal',
-        curve(0, 10, 80, (s) => 8 * speedHz(s)),
+        curve(0, 10, 80, (s) => 6 * speedHz(s)),
       ),
       line(
         'quiet',
@@ -239,7 +239,7 @@ export function wrappedOrderFigure(): HelpFigure {
         'folded',
         curve(0, 10, 80, (s) => aliasHz(order * speedHz(s), rateHz)),
       ),
-      label('signal', [10, 120], 'order 8', 'end'),
+      label('signal', [10, 70], 'order 6', 'end'),
       label('folded', [10, 420], `order ${order}, found`, 'end'),
       label('quiet', [10, 800], `order ${order}, true`, 'end'),
     ],
@@ -261,7 +261,7 @@ export function reflectedSweepFigure(): HelpFigure {
       ...unjoined(above, 50).map((points) => line('folded', points)),
       line('quiet', curve(turnS, 10, 20, sweepHz), true),
       label('signal', [1.4, 150], 'true'),
-      label('folded', [8.4, 240], 'folded', 'middle'),
+      label('folded', [8.2, 330], 'folded'),
     ],
   };
 }

@@ -10,7 +10,7 @@ export const foldPages = {
   foldedTone: {
     kind: 'foldedTone',
     meaning:
-      'A line of the spectrum does not belong where it stands. It comes from a source beyond the folding frequency and was folded down by sampling. Its frequency is wrong by hundreds of hertz or more, and no later filter removes it.',
+      'A line of the spectrum does not belong where it stands. It comes from a source beyond the folding frequency and was folded down by sampling. Its frequency is wrong, and no later filter removes it.',
     formulas: [alias, 'f = k · f_{s} ± f_{a},   k = 1, 2, …', 'p = 1 − exp(−2 · t · ρ)'],
     letters: `${foldLetters} p: probability of a match by chance; t: how close the match is; ρ: how many peaks there are per hertz.`,
     measured:
