@@ -334,7 +334,10 @@ export interface TonePlace {
   ratioDb: number;
   /** The same at places beside it, where nothing is expected, dB. */
   besideDb: number;
-  /** What this capture shows at that place, the same way, over the tone, dB; null beyond its fs/2 and at the tone itself. */
+  /**
+   * What this capture shows at that place itself, the same way, over the tone, dB, where the two could not be told apart; null
+   * where they were, beyond its fs/2 and at the tone itself.
+   */
   hereDb: number | null;
   /** 0 … 1: squared correlation over time of the tone here and what stands there; null where not aligned. */
   coherence: number | null;

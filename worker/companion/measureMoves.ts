@@ -1,6 +1,7 @@
 import { aliasHz, candidatesHz } from '../../shared/screening/foldArithmetic.js';
 import type { ToneMeasurement, ToneMove, TonePlace } from '../../shared/screening/MeasurementRecord.js';
 import { FrameBank } from '../dsp/FrameBank.js';
+import { besideOwn } from './besideOwn.js';
 import { crossAmplitude, filledFrames } from './compareFrames.js';
 import { powerOf } from './complexSums.js';
 
@@ -26,6 +27,9 @@ const frameCounts = [24, 16, 12, 8, 5, 3] as const;
 const disturbingDb = -25;
 /** Places at which less than this of the highest stands are taken to be empty. */
 const leastLooked = 0.03;
+/** A tone of both captures at the place is fitted along, if frames are enough and it is not that much stronger. */
+const leastFramesApart = 8;
+const mostApartDb = 25;
 /** Offsets of the places beside, in widths of a frame's response. */
 const besideWidths = [-2.75, -1.75, 1.75, 2.75] as const;
 
@@ -106,14 +110,24 @@ export function measureMoves(
         .sort((a, b) => a - b);
       const sign = signOf(trueHz, otherRateHz);
       const isElsewhere = Math.abs(expectedHz - tone.frequencyHz) > 2 / lengthS && expectedHz < own.rateHz / 2;
-      return {
+      const place: TonePlace = {
         trueHz,
         expectedHz,
         ratioDb: toDb(ratio),
         besideDb: toDb(isLooked ? ((beside[1] ?? 0) + (beside[2] ?? 0)) / 2 : ratio),
-        hereDb: isLooked && isElsewhere ? toDb(amplitude(ours.at(sign * expectedHz))) : null,
+        hereDb: null,
         coherence: isAligned ? Math.min(1, (ratio * ratio * power) / Math.max(therePower, 1e-300)) : null,
       };
+      if (!isLooked || !isElsewhere) return place;
+      const alsoHere = ours.at(sign * expectedHz);
+      const hereDb = toDb(amplitude(alsoHere));
+      // Frames at the place's own frequency differ from those at the true one by a constant phase only.
+      const apart =
+        isAligned && frames >= leastFramesApart
+          ? besideOwn(theirs.at(sign * expectedHz), ours.at(trueHz), alsoHere)
+          : null;
+      if (apart === null || toDb(apart.amplitude) < hereDb - mostApartDb) return { ...place, hereDb };
+      return { ...place, ratioDb: toDb(apart.amplitude), coherence: apart.coherence };
     });
     return { frequencyHz: tone.frequencyHz, soundsS, isAligned, places };
   });

@@ -66,6 +66,23 @@ describe('measureMoves', () => {
     expect(found[3]?.trueHz).toBeCloseTo(5755.76, 6);
   });
 
+  it('tells a folded tone from one that stands beside its place in both captures', () => {
+    // 1659.76 Hz is where 5755.76 Hz lands at 4096 Hz; 1659.1 Hz is a true tone, twice as strong.
+    const beside = struck(
+      [
+        ...inBand,
+        { frequencyHz: 1659.1, amplitude: 0.4, decayS: 0.8 },
+        { frequencyHz: 5755.76, amplitude: 0.2, decayS: 0.9 },
+      ],
+      0,
+    );
+    const own = sampled(beside, 5000, 4, { noise: 0.005, seed: 1 });
+    const other = sampled(beside, 4096, 4, { noise: 0.005, seed: 2 });
+    const found = judge(0, own, other);
+    expect(found[3]?.outcome).toBe('moved');
+    expect(found[3]?.trueHz).toBeCloseTo(5755.76, 6);
+  });
+
   it('keeps a tone of one capture alone, as converters make them, from being called moved', () => {
     const clean = struck(inBand, 0);
     const own = sampled(clean, 5000, 4, { noise: 0.02, seed: 1 }).map(
