@@ -4,6 +4,7 @@ import type { Thresholds } from '../schemas/thresholds.js';
 import type { FoldEvidence } from './FoldEvidence.js';
 import { aliasHz, candidatesHz, zoneOf } from './foldArithmetic.js';
 import { explainDistortion } from './explainDistortion.js';
+import { explainRest } from './explainRest.js';
 import { explainSideBands } from './explainSideBands.js';
 import { foldedComb, type FoldedMatch, refineFamily } from './foldedComb.js';
 import { foldedToneFinding } from './foldedToneFinding.js';
@@ -49,6 +50,7 @@ export function judgeTones(record: MeasurementRecord, thresholds: Thresholds, sh
   explainKnownSources(tones, measured, sheet, sampleRateHz, binHz);
   explainSideBands(tones, measured, binHz);
   const distortion = explainDistortion(tones, measured, record, sampleRateHz, binHz);
+  explainRest(tones, measured, binHz, record.samples / 2);
   const folded = tones.filter(
     (tone) => tone.explanation.startsWith('folded') || tone.explanation === 'movedBetweenRates',
   );
