@@ -15,7 +15,7 @@ const rangeOverSpread = Math.sqrt(12);
 /** The same line has to be seen below fs/2 when nothing else follows the law. */
 const leastInBandDb = 12;
 /** The background of a real capture has a heavier tail than noise of the same mean. */
-const leastUnit = 1.5;
+const tailWeight = 1.5;
 const candidatesListed = 4;
 /** Below the total power by the protection and this much more, a folded order is no reason to call a capture folded. */
 const immaterialBelowDb = 25;
@@ -84,7 +84,7 @@ function judgeLaw(
 ): Omit<JudgedLine, 'isMaterial'>[] {
   const tried = Math.log(Math.max(2, law.linesTried));
   // Where even the opposite law shows lines higher than noise makes them, all are measured against those.
-  const unit = Math.max(leastUnit, 10 ** (law.chanceStandsOutDb / 10) / tried);
+  const unit = tailWeight * Math.max(1, 10 ** (law.chanceStandsOutDb / 10) / tried);
   return law.lines
     .filter(({ apartBins }) => apartBins >= leastApartBins)
     .filter(({ inBandStandsOutDb }) => law.inBandLines.length > 0 || (inBandStandsOutDb ?? 0) > leastInBandDb)

@@ -14,7 +14,7 @@ import { removeInBandLines } from '../dsp/warp/removeInBandLines.js';
 import { oppositeLaw, type SpeedLaw } from '../dsp/warp/SpeedLaw.js';
 import type { ChannelSpeed } from '../dsp/warp/speedFromChannel.js';
 import { taperEnds } from '../dsp/warp/taperEnds.js';
-import { type TransformOf, transformsBySize } from '../dsp/warp/transformsBySize.js';
+import { type TransformOf, transformOf } from '../dsp/warp/transformOf.js';
 import type { WarpedTransform } from '../dsp/warp/WarpedTransform.js';
 import { binPowers, type WarpedLine, warpedLines } from '../dsp/warp/warpedLines.js';
 
@@ -56,16 +56,17 @@ export function measureOrders(samples: Float64Array, options: OrderOptions): Ord
   const mean = samples.reduce((sum, value) => sum + value, 0) / length;
   const flat = flattenSpectrum(samples.map((value) => value - mean));
   const tapered = taperEnds(flat.samples);
-  const transformOf = transformsBySize();
   const known = options.speed ? followLaw(tapered, options.speed.law, transformOf) : null;
   const found = known === null ? findLaws(tapered, collectVotes(flat.samples), transformOf) : [known];
   const stretch = { tapered, flat, options, transformOf, speed: known === null ? null : (options.speed ?? null) };
-  const supported = found.map((one) => ({ ...one, inBand: inBandLines(one.law, stretch) }));
-  const measured = supported.map((one) => {
-    // What turns with another shaft is no line here, but hundreds of its bins could pass for one.
-    const others = supported.filter((other) => other !== one && other.inBand.length >= leastMachineLines);
-    return { law: one.law, measured: measureLaw(one, others, stretch) };
-  });
+  const measured = found.map((one) => ({
+    law: one.law,
+    measured: measureLaw(
+      one,
+      found.filter((other) => other !== one).map(({ law }) => law),
+      stretch,
+    ),
+  }));
   const laws = dropSameRidges(measured, options.sampleRateHz);
   return {
     fromS: options.fromS,
@@ -92,18 +93,37 @@ interface Stretch {
   speed: ChannelSpeed | null;
 }
 
-interface SupportedLaw extends FoundLaw {
-  inBand: WarpedLine[];
+function inBandLines(samples: Float64Array, law: SpeedLaw, transformOf: TransformOf): WarpedLine[] {
+  const count = Math.floor(law.length / 2 / Math.max(...speedShares.map(law.speedAt)));
+  return warpedLines(binPowers(transformOf(count + 64).forward(law.warped, samples)), 3, count, inBandRatio);
 }
 
-function inBandLines(law: SpeedLaw, { tapered, transformOf }: Stretch): WarpedLine[] {
-  const count = Math.floor(law.length / 2 / Math.max(...speedShares.map(law.speedAt)));
-  return warpedLines(binPowers(transformOf(count + 64).forward(law.warped, tapered)), 3, count, inBandRatio);
+/**
+ * What turns with another shaft is no line under this law, but hundreds of its bins could pass for one: it is taken out where
+ * at least three lines that this law leaves share the other law in band (one alone may be a folded line of this law).
+ */
+function removeMachines(
+  tapered: Float64Array,
+  law: SpeedLaw,
+  others: SpeedLaw[],
+  transformOf: TransformOf,
+): { rest: Float64Array; machines: SpeedLaw[]; lineCount: number } {
+  let rest = removeInBandLines(tapered, law, transformOf);
+  const machines: SpeedLaw[] = [];
+  let lineCount = 0;
+  for (const other of others) {
+    const lines = inBandLines(rest, other, transformOf);
+    if (lines.length < leastMachineLines) continue;
+    machines.push(other);
+    lineCount += lines.length;
+    rest = removeInBandLines(rest, other, transformOf);
+  }
+  return { rest, machines, lineCount };
 }
 
 function measureLaw(
-  { law, sharpness, steadySharpness, inBand }: SupportedLaw,
-  others: SupportedLaw[],
+  { law, sharpness, steadySharpness }: FoundLaw,
+  others: SpeedLaw[],
   { tapered, flat, options, transformOf, speed }: Stretch,
 ): OrderLawMeasurement {
   const { sampleRateHz, highestHz, fromS } = options;
@@ -112,13 +132,11 @@ function measureLaw(
   const count = Math.ceil((highestHz / sampleRateHz) * length) + 64;
   const transform = transformOf(count);
   const speeds = speedShares.map(law.speedAt);
-  const rest = [law, ...others.map((other) => other.law)].reduce(
-    (left, removed) => removeInBandLines(left, removed, transformOf),
-    tapered,
-  );
+  const inBand = inBandLines(tapered, law, transformOf);
+  const { rest, machines, lineCount } = removeMachines(tapered, law, others, transformOf);
   const lines = foldedLines(transform.forward(law.warped, rest), law)
     .filter(({ ratio }) => ratio > leastKeptRatio)
-    .filter((line) => !others.some((other) => followsOtherLaw({ law, ...line }, other.law)));
+    .filter((line) => !machines.some((machine) => followsOtherLaw({ law, ...line }, machine)));
   const chanceRatio = lines.length === 0 ? 0 : highestByChance(rest, oppositeLaw(law), transform);
   return {
     mode: speed === null ? 'blind' : 'speedChannel',
@@ -131,7 +149,7 @@ function measureLaw(
     inBandLines: inBand
       .slice(0, mostLinesKept)
       .map(({ bin, ratio }) => ({ frequencyHz: bin / durationS, standsOutDb: decibels(ratio) })),
-    otherLines: others.reduce((sum, other) => sum + other.inBand.length, 0),
+    otherLines: lineCount,
     linesTried: count,
     chanceStandsOutDb: decibels(Math.max(1, chanceRatio)),
     lines: lines.slice(0, mostLinesKept).map((line) => {

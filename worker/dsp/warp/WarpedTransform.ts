@@ -26,13 +26,14 @@ export class WarpedTransform {
   private readonly fft: RealFft;
   private readonly grid: Float64Array;
   private readonly gains: Float64Array;
+  private inverse: FFT | null = null;
 
   constructor(count: number) {
     this.count = count;
     this.size = 2 ** Math.ceil(Math.log2(Math.max(32, 4 * count)));
     this.fft = createRealFft(this.size);
     this.grid = new Float64Array(this.size);
-    this.gains = Float64Array.from({ length: count }, (_, k) => 1 / kernelTransform((2 * Math.PI * k) / this.size));
+    this.gains = Float64Array.from({ length: count }, (_, k) => gainAt(k / this.size));
   }
 
   /** @returns interleaved real and imaginary parts, 2·count numbers, in a buffer of its own */
@@ -67,7 +68,7 @@ export class WarpedTransform {
   /** @param coefficients interleaved, as `forward` gives them; @returns one real value a place */
   backward(places: Float64Array, coefficients: Float64Array): Float64Array {
     const { size, count, gains } = this;
-    const fft = new FFT(size);
+    this.inverse ??= new FFT(size);
     const input = new Float64Array(2 * size);
     for (let k = 0; k < count; k++) {
       const gain = gains[k] as number;
@@ -75,7 +76,7 @@ export class WarpedTransform {
       input[2 * k + 1] = (coefficients[2 * k + 1] as number) * gain * size;
     }
     const output = new Float64Array(2 * size);
-    fft.inverseTransform(output, input);
+    this.inverse.inverseTransform(output, input);
     const mask = size - 1;
     return places.map((place) => {
       const at = (place - Math.floor(place)) * size;
@@ -91,6 +92,21 @@ export class WarpedTransform {
       return sum;
     });
   }
+}
+
+const gainSteps = 2048;
+const highestUsed = 0.25;
+/** One over the kernel's Fourier transform, at 0 … a quarter of a cycle a grid point, for straight lines between. */
+const gainTable = Float64Array.from(
+  { length: gainSteps + 2 },
+  (_, index) => 1 / kernelTransform((2 * Math.PI * highestUsed * index) / gainSteps),
+);
+
+function gainAt(cycles: number): number {
+  const exact = (cycles / highestUsed) * gainSteps;
+  const entry = Math.floor(exact);
+  const low = gainTable[entry] as number;
+  return low + (exact - entry) * ((gainTable[entry + 1] as number) - low);
 }
 
 /** Fourier transform of the kernel over grid distance, by the midpoint rule (the kernel vanishes smoothly at its ends). */

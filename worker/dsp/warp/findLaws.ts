@@ -5,7 +5,7 @@ import { evenChange, proportionalChange, type RateFamily } from './RateFamily.js
 import { refineLaw, type Rung } from './refineLaw.js';
 import { sharpness } from './sharpness.js';
 import { linearLaw, type SpeedLaw } from './SpeedLaw.js';
-import type { TransformOf } from './transformsBySize.js';
+import type { TransformOf } from './transformOf.js';
 import { binPowers, warpedLines } from './warpedLines.js';
 import { type RateCandidate, voteForRates } from './voteForRates.js';
 

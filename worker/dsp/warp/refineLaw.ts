@@ -3,7 +3,7 @@ import { envelopePoints } from './lineEnvelope.js';
 import { sharedDrift, type SharedDrift } from './sharedDrift.js';
 import { sharpness } from './sharpness.js';
 import { lawFromWarped, type SpeedLaw } from './SpeedLaw.js';
-import type { TransformOf } from './transformsBySize.js';
+import type { TransformOf } from './transformOf.js';
 import { binPowers, type WarpedLine, warpedLines } from './warpedLines.js';
 
 const leastLineRatio = 10;

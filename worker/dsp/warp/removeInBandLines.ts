@@ -1,5 +1,5 @@
 import type { SpeedLaw } from './SpeedLaw.js';
-import type { TransformOf } from './transformsBySize.js';
+import type { TransformOf } from './transformOf.js';
 import { binPowers, warpedLines } from './warpedLines.js';
 
 const leastRatio = 12;

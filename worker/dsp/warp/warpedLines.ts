@@ -12,6 +12,7 @@ export interface WarpedLine {
 
 const nearest = 4;
 const farthest = 36;
+const quickBins = 10;
 /** Median of an exponential distribution over its mean. */
 const medianShare = Math.LN2;
 
@@ -31,23 +32,21 @@ export function warpedLines(powers: Float64Array, from: number, to: number, leas
   for (let bin = Math.max(2, from); bin < Math.min(to, powers.length - 1); bin++) {
     const power = powers[bin] as number;
     if (power < (powers[bin - 1] as number) || power <= (powers[bin + 1] as number)) continue;
-    if (power < leastRatio * quickFloor(powers, bin)) continue;
+    if (isDrowned(powers, bin, (power / leastRatio) * medianShare)) continue;
     const floor = floorAround(powers, bin);
     if (power > leastRatio * floor) lines.push({ bin, power, floor, ratio: power / Math.max(floor, 1e-300) });
   }
   return lines.sort((a, b) => b.ratio - a.ratio);
 }
 
-/** A lower limit of the floor, to spare most local maxima the medians. */
-function quickFloor(powers: Float64Array, bin: number): number {
-  let least = Infinity;
-  let sum = 0;
-  for (let k = nearest; k < nearest + 8; k++) {
-    const here = (powers[Math.max(1, bin - k)] as number) + (powers[Math.min(powers.length - 1, bin + k)] as number);
-    least = Math.min(least, here);
-    sum += here;
+/** Whether so many of the bins around are so high that the floor can't be low enough: spares most local maxima the medians. */
+function isDrowned(powers: Float64Array, bin: number, most: number): boolean {
+  let higher = 0;
+  for (let k = nearest; k < nearest + quickBins; k++) {
+    if ((powers[Math.max(1, bin - k)] as number) > most) higher++;
+    if ((powers[Math.min(powers.length - 1, bin + k)] as number) > most) higher++;
   }
-  return Math.min(least, sum / 64);
+  return higher > 1.5 * quickBins;
 }
 
 function floorAround(powers: Float64Array, bin: number): number {
