@@ -39,6 +39,9 @@ const clearGain = 3;
 /** Lines up to 1.3·fs/2 count: a sweep through fs/2 has its middle there. */
 const countedBand = 0.65;
 const firstBin = 3;
+const comparedPlaces = 48;
+/** Laws whose warped times differ by less than this (samples, rms) are the same law, found twice. */
+const sameTurns = 3;
 const inBandRatio = 10;
 
 /** From a slope that is known, and from steady speed: each rung needs the law as well as the one before leaves it. */
@@ -111,14 +114,24 @@ export function followLaw(tapered: Float64Array, known: SpeedLaw, transformOf: T
   return found.sharpness > leastKnownGain * Math.max(noiseSharpness, found.steadySharpness) ? found : null;
 }
 
-/** Laws that no line below fs/2 tells apart; the ends, where samples fade, don't count. */
+/**
+ * Laws that hardly differ but in their mean speed, which only names the lines otherwise. The ends, where samples fade and
+ * no line holds a law, don't count.
+ */
 function isSameLaw(a: SpeedLaw, b: SpeedLaw): boolean {
-  const skip = Math.floor(0.05 * a.length);
-  let most = 0;
-  for (let n = skip; n < a.length - skip; n++) {
-    most = Math.max(most, Math.abs((a.warped[n] as number) - (b.warped[n] as number)));
-  }
-  return most * a.length < leastBins;
+  const { length } = a;
+  const skip = Math.floor(0.08 * length);
+  const places = Array.from({ length: comparedPlaces }, (_, i) =>
+    Math.floor(skip + ((length - 1 - 2 * skip) * i) / (comparedPlaces - 1)),
+  );
+  const x = places.map((n) => b.warped[n] as number);
+  const y = places.map((n) => a.warped[n] as number);
+  const meanX = x.reduce((sum, value) => sum + value, 0) / comparedPlaces;
+  const meanY = y.reduce((sum, value) => sum + value, 0) / comparedPlaces;
+  const xx = x.reduce((sum, value) => sum + (value - meanX) ** 2, 0);
+  const slope = x.reduce((sum, value, i) => sum + (value - meanX) * ((y[i] as number) - meanY), 0) / xx;
+  const squares = x.reduce((sum, value, i) => sum + ((y[i] as number) - meanY - slope * (value - meanX)) ** 2, 0);
+  return Math.sqrt(squares / comparedPlaces) * length < sameTurns;
 }
 
 /** Of the lines that support a candidate the one that fixes its slope best. */
