@@ -1,5 +1,5 @@
 import { companionGainDb } from './companionGain.js';
-import { poissonTail } from './harmonicFamily.js';
+import { matchSigmas, poissonTail, toneErrorHz } from './harmonicFamily.js';
 import { fitsPlace, type JudgedMove, judgeMove } from './judgeMove.js';
 import type { CompanionMeasurement, ToneMeasurement, ToneMove } from './MeasurementRecord.js';
 
@@ -7,7 +7,8 @@ export interface JudgedMoves {
   gainDb: number;
   /**
    * Chance that captures of two different events agree as much: of the cross-correlation where they are aligned, else of as many
-   * tones at their own places, measured by how often those tones find other places occupied.
+   * tones at their own places, the surer of two measures: how often those tones find other places occupied, and how well the
+   * frequencies of both lists agree for their errors.
    */
   eventChance: number;
   /** One entry a measured tone; null for a tone that was not looked for. */
@@ -37,7 +38,14 @@ export function judgeMoves(measured: readonly ToneMeasurement[], companion: Comp
   const count = judged.filter((one) => one !== null).length;
   const eventChance = isAligned
     ? (companion.alignment?.chanceProbability ?? 1)
-    : poissonTail(staying.length, count * ((accident.hits + 0.5) / (accident.places + 1)));
+    : Math.min(
+        1,
+        2 *
+          Math.min(
+            poissonTail(staying.length, count * ((accident.hits + 0.5) / (accident.places + 1))),
+            chanceOfSamePlaces(measured, companion),
+          ),
+      );
   const byPower = isAligned ? 0 : accident.hits / Math.max(1, accident.places);
   const chances = judged.map((one) =>
     one?.outcome === 'moved' ? Math.min(1, Math.max(one.chanceProbability, one.tried * byPower)) : 0,
@@ -56,6 +64,27 @@ export function judgeMoves(measured: readonly ToneMeasurement[], companion: Comp
 }
 
 const stays = (one: JudgedMove | null): boolean => one?.outcome === 'stays' || one?.outcome === 'ambiguous';
+
+/** Chance that as many tones stand at the same frequencies in both lists, each within the errors of both. */
+function chanceOfSamePlaces(measured: readonly ToneMeasurement[], companion: CompanionMeasurement): number {
+  const binHz = 1 / Math.max(companion.durationS, 1e-9);
+  let [same, expected] = [0, 0];
+  for (const tone of measured) {
+    const toleranceOf = (other: ToneMeasurement): number =>
+      matchSigmas * Math.hypot(toneErrorHz(tone, binHz), toneErrorHz(other, binHz));
+    const nearest = companion.tones.reduce<ToneMeasurement | null>(
+      (best, other) =>
+        Math.abs(other.frequencyHz - tone.frequencyHz) < Math.abs((best?.frequencyHz ?? Infinity) - tone.frequencyHz)
+          ? other
+          : best,
+      null,
+    );
+    if (nearest === null) continue;
+    expected += 1 - Math.exp(-2 * toleranceOf(nearest) * nearest.peaksPerHz);
+    if (Math.abs(nearest.frequencyHz - tone.frequencyHz) <= toleranceOf(nearest)) same++;
+  }
+  return poissonTail(same, expected);
+}
 
 /** How often a tone that stays finds one of its other places occupied as well. */
 function accidents(staying: readonly (ToneMove | null)[], gainDb: number): { hits: number; places: number } {

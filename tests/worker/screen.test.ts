@@ -150,6 +150,24 @@ describe('the screen command', { timeout: 90_000 }, () => {
     expect(open?.bandOfInterestHz).toEqual([0, 300]);
   });
 
+  it('compares the files of one pair with each other', () => {
+    writeFileSync(inFolder('pairs.csv'), 'file,pair\nslow.wav,blow 1\nother.wav,blow 1\n');
+    const { status, lines, stderr } = run(
+      '--manifest',
+      inFolder('pairs.csv'),
+      inFolder('slow.wav'),
+      inFolder('other.wav'),
+    );
+    expect(status).toBe(0);
+    const moved = lines.map((line) =>
+      channelScreenSchema.parse(line).tones.find(({ explanation }) => explanation === 'movedBetweenRates'),
+    );
+    // 1300 Hz lands on 700 Hz at 2000 Hz and on 1200 Hz at 2500 Hz.
+    expect(moved.map((tone) => Math.round(tone?.frequencyHz ?? 0))).toEqual([700, 1200]);
+    expect(moved.map((tone) => Math.round(tone?.trueFrequencyHz ?? 0))).toEqual([1300, 1300]);
+    expect(stderr).toContain('companion: ');
+  });
+
   it('ends with 2 and prints nothing on standard output when called wrongly', () => {
     writeFileSync(inFolder('bad.json'), JSON.stringify({ requiredProtectionDb: 1000 }));
     for (const argv of [[], ['--bogus'], ['--thresholds', inFolder('bad.json'), inFolder('open.wav')]]) {

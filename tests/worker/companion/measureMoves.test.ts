@@ -92,6 +92,21 @@ describe('measureMoves', () => {
     expect(judge(0, own, other).map(({ outcome }) => outcome)).toEqual(['stays', 'stays', 'stays', 'absent']);
   });
 
+  it('solves |f − n₁·fs₁| = fa₁ and |f − n₂·fs₂| = fa₂ beyond the first zones: 2·5000 + 1717.3 = 3·4096 − 570.7 (Xia 1999)', () => {
+    const far = struck([...inBand, { frequencyHz: 11_717.3, amplitude: 0.3, decayS: 0.7 }], 0);
+    const own = sampled(far, 5000, 4, { noise: 0.01, seed: 1 });
+    const other = sampled(far, 4096, 4, { noise: 0.01, seed: 2 });
+    const tones = [...inBand.map(({ frequencyHz }) => buildTone(frequencyHz)), buildTone(1717.3)];
+    const clock = { lagS: 0, clockRatio: 1 };
+    const moves = measureMoves({ samples: own, rateHz: 5000 }, { samples: other, rateHz: 4096 }, clock, tones, 12_500);
+    const move = moves.find(({ frequencyHz }) => frequencyHz === 1717.3);
+    if (move === undefined) throw new Error('The tone was not looked for.');
+    const { outcome, place } = judgeMove(move, buildTone(1717.3), companion, companionGainDb(moves) ?? Number.NaN);
+    expect(outcome).toBe('moved');
+    expect(place?.trueHz).toBeCloseTo(11_717.3, 6);
+    expect(place?.expectedHz).toBeCloseTo(570.7, 6);
+  });
+
   it('finds nothing to compare where the captures do not overlap', () => {
     const own = sampled(event, 5000, 1);
     const other = sampled(event, 4096, 1);
