@@ -8,7 +8,7 @@ import type { Pass } from './Pass.js';
 
 /** Frames of one stretch: a longer one gains little on real sources, and costs time and memory. */
 const mostStretchFrames = 2 ** 16;
-const mostStretches = 3;
+const mostStretches = 2;
 /** Frames kept in memory over all channels at a time; channels beyond are not looked at. */
 const mostFramesKept = 2 ** 21;
 /** Orders are looked for up to this multiple of the rate, or the sensor's band. */
@@ -19,7 +19,7 @@ interface Stretch {
   frames: number;
 }
 
-/** Up to three stretches spread evenly over the capture; all of it where it is short enough. */
+/** Up to two stretches, one at each end of the capture; all of it where it is short enough. */
 function planStretches(frameCount: number): Stretch[] {
   if (frameCount < leastOrderSamples) return [];
   const count = Math.min(mostStretches, Math.ceil(frameCount / mostStretchFrames));

@@ -17,6 +17,9 @@ export interface ChirpVote {
   noiseSpread: number;
 }
 
+/** Spectra with the windows g, t·g, g′, t·g′, g″. */
+type Spectra = [Float64Array, Float64Array, Float64Array, Float64Array, Float64Array];
+
 const leastRatio = 8;
 /** Peaks kept of all frames of one length, the strongest of each frame. */
 const votesPerLength = 900;
@@ -26,21 +29,20 @@ const votesPerLength = 900;
  * exact for a linear chirp (second-order reassignment; Oberlin, Meignen & Perrier 2015, eq. 12).
  */
 export function chirpVotes(samples: Float64Array, length: number): ChirpVote[] {
-  const transforms = windows(length).map((window) => ({
-    window,
-    fft: createRealFft(length),
-    input: new Float64Array(length),
-  }));
+  const fft = createRealFft(length);
+  const shapes = windows(length);
+  const spectra = shapes.map(() => new Float64Array(length + 2)) as Spectra;
+  const input = new Float64Array(length);
   const half = length / 2;
   const power = new Float64Array(half + 1);
   const votes: ChirpVote[] = [];
   const hop = half;
   const mostPerFrame = Math.max(4, Math.ceil((votesPerLength * hop) / samples.length));
   for (let first = 0; first + length <= samples.length; first += hop) {
-    const spectra = transforms.map(({ window, fft, input }) => {
-      for (let n = 0; n < length; n++) input[n] = (samples[first + n] as number) * (window[n] as number);
-      return fft.transform(input);
-    }) as [Float64Array, Float64Array, Float64Array, Float64Array, Float64Array];
+    shapes.forEach((shape, i) => {
+      for (let n = 0; n < length; n++) input[n] = (samples[first + n] as number) * (shape[n] as number);
+      spectra[i]?.set(fft.transform(input).subarray(0, length + 2));
+    });
     const [g] = spectra;
     for (let k = 0; k <= half; k++) power[k] = (g[2 * k] as number) ** 2 + (g[2 * k + 1] as number) ** 2;
     const floor = Float64Array.from(power).sort()[Math.floor(half / 2)] as number;
@@ -70,7 +72,7 @@ export function chirpVotes(samples: Float64Array, length: number): ChirpVote[] {
 }
 
 function readPeak(
-  [g, tg, dg, tdg, ddg]: [Float64Array, Float64Array, Float64Array, Float64Array, Float64Array],
+  [g, tg, dg, tdg, ddg]: Spectra,
   k: number,
   length: number,
 ): { frequency: number; slope: number } | null {
