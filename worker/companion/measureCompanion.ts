@@ -20,7 +20,7 @@ const defaultReach = 2;
  * that many captures share agree a little and mean nothing.
  */
 const alignedChance = 1e-4;
-const leastAgreement = 0.15;
+const leastAgreement = 0.3;
 
 /** A companion at about twice the rate or more is taken to show each frequency at its own place. */
 const fastRatio = 1.9;
