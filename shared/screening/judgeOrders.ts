@@ -69,6 +69,7 @@ export function judgeOrders(record: MeasurementRecord, thresholds: Thresholds, s
         law,
         shown.filter((one) => one.law === law),
         sampleRateHz,
+        record.integrity.clippedShare > thresholds.maxClippedShare,
       ),
     ),
     logRatio: Math.min(largestLogRatio, Math.max(0, -Math.log(Math.max(leastChance, 1e-6)) / 1.5)),
@@ -117,7 +118,7 @@ function explainedBy(law: OrderLawMeasurement, family: OrderFamily | null, line:
 }
 
 /** One finding a law: the strongest folded line stands for all of them. */
-function lawFinding(law: OrderLawMeasurement, shown: JudgedLine[], sampleRateHz: number): Finding {
+function lawFinding(law: OrderLawMeasurement, shown: JudgedLine[], sampleRateHz: number, isClipped: boolean): Finding {
   const best = shown.reduce((top, one) => (one.line.levelDb > top.line.levelDb ? one : top));
   const { line, tone, family } = best;
   const order = family?.orderOf(line.meanFrequencyHz) ?? null;
@@ -127,6 +128,8 @@ function lawFinding(law: OrderLawMeasurement, shown: JudgedLine[], sampleRateHz:
   const place = `stands at ${formatHz(line.frequencyHz)} and belongs at ${formatHz(line.trueFrequencyHz)} (zone ${zone.number}${zone.direction === 'mirrored' ? ', mirrored' : ''})`;
   const change = formatPercent(law.speedChange);
   const others = shown.length > 1 ? ` ${shown.length} lines are folded in this way.` : '';
+  // Harmonics made after sampling fold like any other, and no filter in front helps against them.
+  const clipping = isClipped ? ' The capture is clipped: clipping makes harmonics that fold, so remove it first.' : '';
   const text = isSweep
     ? `A sweep runs through the folding frequency and is reflected: from ${formatSeconds(line.fromS)} to ${formatSeconds(line.toS)} it ${place}, with the same phase law as before.`
     : `The speed changes by ${change}, and ${order === null ? 'a line' : `order ${order}`} beyond the folding frequency follows it: it ${place}, ${formatDb(line.standsOutDb)} over its surroundings.${others} The speed is known from ${modeText[family?.isStated === true && law.mode === 'blind' ? 'nominalSpeed' : law.mode]}.`;
@@ -139,7 +142,7 @@ function lawFinding(law: OrderLawMeasurement, shown: JudgedLine[], sampleRateHz:
     fromS: line.fromS,
     toS: line.toS,
     strengthDb: line.levelDb,
-    text: `${text} Chance of such a match: ${formatPercent(tone.chanceProbability ?? 1)}.`,
+    text: `${text}${clipping} Chance of such a match: ${formatPercent(tone.chanceProbability ?? 1)}.`,
     evidence: {
       uncertaintyHz: line.uncertaintyHz,
       standsOutDb: line.standsOutDb,

@@ -95,6 +95,13 @@ describe('judgeOrders', () => {
     expect(shownConfidence).toBe(0);
   });
 
+  it('names clipping as a source of folded harmonics where the capture is clipped', () => {
+    const record = buildRecord({ orders: [{ fromS: 0, toS: 10, highestHz: 3000, laws: [law()] }] });
+    const clipped = { ...record, integrity: { ...record.integrity, clippedShare: 0.01 } };
+    expect(judgeOrders(clipped, defaultThresholds, {}).findings[0]?.text).toContain('The capture is clipped');
+    expect(judgeOrders(record, defaultThresholds, {}).findings[0]?.text).not.toContain('clipped');
+  });
+
   it('counts orders of the stated speed where the lines follow it', () => {
     const [finding] = judge([law()], { nominalSpeedHz: 12.1 }).findings;
     expect(finding?.evidence).toMatchObject({ orderCount: 100 });
