@@ -139,15 +139,19 @@ export function judgeEdge(
       method: 'flatness over frequency, steadiness over time',
     });
   }
-  if (edge.occupiedToHz < (overSampledShare * sampleRateHz) / 2) {
+  // A cliff elsewhere than an L-fold raised rate puts it is the end of the content, and no reason to limit anything.
+  const endHz = edge.cliff?.edgeHz ?? edge.occupiedToHz;
+  if (old === null && endHz < (overSampledShare * sampleRateHz) / 2) {
     findings.push({
       kind: 'overSampled',
       severity: 'note',
       confidence: 0.9,
-      frequencyHz: edge.occupiedToHz,
-      text: `Above ${formatHz(edge.occupiedToHz)} the density stays 60 dB below its highest value: the true bandwidth is about that, and a lower rate would do.`,
-      evidence: { occupiedToHz: edge.occupiedToHz, foldingFrequencyHz: sampleRateHz / 2 },
-      method: 'Welch density, smoothed',
+      frequencyHz: endHz,
+      text: `Above ${formatHz(endHz)} there is next to nothing: the true bandwidth is about that, and a lower rate would do.`,
+      evidence: { trueBandwidthHz: endHz, occupiedToHz: edge.occupiedToHz, foldingFrequencyHz: sampleRateHz / 2 },
+      method: edge.cliff
+        ? 'fall of the smoothed density within a twelfth of the frequency'
+        : 'Welch density, smoothed, 60 dB below its highest value',
       source: 'Welch 1967',
     });
   }

@@ -50,6 +50,18 @@ export function oldRate(record: MeasurementRecord): OldRate | null {
     };
   }
   const cliff = edge.cliff ?? null;
-  if (cliff === null) return null;
+  if (cliff === null || !fitsWholeFactor(cliff.edgeHz / (profile.cellHz * profile.meanDb.length || 1))) return null;
   return { trueBandwidthHz: cliff.edgeHz, foldingFrequencyHz: null, factor: null, by: 'cliff', edgeDensityDb: null };
+}
+
+/** A filter's edge stands between these shares of the old folding frequency. */
+const edgeShares = { from: 0.82, to: 1 } as const;
+const highestFactor = 8;
+
+/** Whether a cliff at this share of fs/2 is where an L-fold raised rate puts it; elsewhere it may be the source's own end. */
+function fitsWholeFactor(share: number): boolean {
+  for (let factor = 2; factor <= highestFactor; factor++) {
+    if (share * factor >= edgeShares.from && share * factor <= edgeShares.to) return true;
+  }
+  return false;
 }
