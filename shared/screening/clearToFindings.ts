@@ -72,7 +72,7 @@ export function clearToFindings(
         : `Up to ${formatHz(clearToHz)} the signal stands at least ${asked} above the largest contamination that the band edge allows, provided that ${assumption}.`;
     const reaches = clearToHz !== null && clearToHz >= band[1];
     const rest = isProtected
-      ? ` ${whole}: the band is protected as a whole, but weak components${clearToHz === null ? '' : ' further up'} stand alone.`
+      ? ` ${whole}: as far as its edge tells, the band is protected as a whole, but weak components${clearToHz === null ? '' : ' further up'} stand alone.`
       : ` The band of interest reaches to ${formatHz(band[1])}.`;
     findings.push({
       ...common,

@@ -12,11 +12,13 @@ import { bestBlindFamily, followFamily, type HarmonicFamily, matchSigmas, toneEr
 import { judgeMovedTones } from './judgeMovedTones.js';
 import type { MeasurementRecord, ToneMeasurement } from './MeasurementRecord.js';
 
-/** Relative error of a frequency written into a sheet: speeds and supplies are known to about this. */
-const statedRelativeError = 2e-3;
+/** Large supply grids keep their frequency within some 0.4 %, three of these (common practice). */
+const supplyRelativeError = 1.3e-3;
+/** A speed written into a sheet is known to about this. */
+const speedRelativeError = 2e-3;
 const candidatesListed = 4;
 const mostBlindFamilies = 4;
-/** A match more likely by chance than not is none. */
+/** A match less sure than this is not listed as folded. */
 const leastFoldedConfidence = 0.8;
 /** Captures with a family in band of which one in six also holds folded members: a match by chance weighs that much more. */
 const priorOdds = 0.2;
@@ -85,12 +87,12 @@ function statedFundamentals(
   sampleRateHz: number,
 ): { name: string; frequencyHz: number; errorHz: number }[] {
   const stated: { name: string; frequencyHz: number; errorHz: number }[] = [];
-  const add = (name: string, frequencyHz: number | undefined): void => {
+  const add = (name: string, frequencyHz: number | undefined, relativeError: number): void => {
     if (frequencyHz === undefined || frequencyHz >= sampleRateHz / 2) return;
-    stated.push({ name, frequencyHz, errorHz: statedRelativeError * frequencyHz });
+    stated.push({ name, frequencyHz, errorHz: relativeError * frequencyHz });
   };
-  add('supply', sheet.supplyHz);
-  add('shaft', sheet.nominalSpeedHz);
+  add('supply', sheet.supplyHz, supplyRelativeError);
+  add('shaft', sheet.nominalSpeedHz, speedRelativeError);
   return stated;
 }
 
