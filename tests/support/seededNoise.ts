@@ -1,13 +1,8 @@
-/** Gaussian noise of unit variance, the same for the same seed (mulberry32, Box-Muller). */
+import { seededRandom } from '../../worker/dsp/seededRandom.js';
+
+/** Gaussian noise of unit variance, the same for the same seed (Box & Muller 1958). */
 export function seededNoise(count: number, seed = 1): Float64Array {
-  let state = seed >>> 0;
-  const random = (): number => {
-    state = (state + 0x6d2b79f5) >>> 0;
-    let t = state;
-    t = Math.imul(t ^ (t >>> 15), t | 1);
-    t ^= t + Math.imul(t ^ (t >>> 7), t | 61);
-    return ((t ^ (t >>> 14)) >>> 0) / 4294967296;
-  };
+  const random = seededRandom(seed);
   return Float64Array.from(
     { length: count },
     () => Math.sqrt(-2 * Math.log(1 - random())) * Math.cos(2 * Math.PI * random()),

@@ -3,7 +3,7 @@ import { defaultThresholds } from '../../../shared/schemas/thresholds.js';
 import { judgeChannel } from '../../../shared/screening/judgeChannel.js';
 import { measureCapture } from '../../../worker/measure/measureCapture.js';
 import { memorySource } from '../../support/memorySource.js';
-import { seededRandom } from '../statistics/seededRandom.js';
+import { seededRandom } from '../../../worker/dsp/seededRandom.js';
 import { gaussian } from '../synthetic/drawing.js';
 import { fisherBoundHz } from './fisherBoundHz.js';
 import type { MonteCarloResult, MonteCarloTask } from './MonteCarloTask.js';

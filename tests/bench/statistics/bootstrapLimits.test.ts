@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { bootstrapLimits } from './bootstrapLimits.js';
-import { seededRandom } from './seededRandom.js';
+import { seededRandom } from '../../../worker/dsp/seededRandom.js';
 
 const random = seededRandom(3);
 const values = Float64Array.from({ length: 400 }, () => random());

@@ -1,4 +1,4 @@
-import { seededRandom } from './seededRandom.js';
+import { seededRandom } from '../../../worker/dsp/seededRandom.js';
 
 export interface Limits {
   low: number;

@@ -2,7 +2,7 @@ import { describe, expect, it } from 'vitest';
 import { calibrationAtShare } from './calibrationAtShare.js';
 import { calibrationError } from './calibrationError.js';
 import { reliability } from './reliability.js';
-import { seededRandom } from './seededRandom.js';
+import { seededRandom } from '../../../worker/dsp/seededRandom.js';
 
 /** Captures whose ratio x is normal, N(±d/2·d, d²): for two normals d apart the log-likelihood ratio is exactly that. */
 function exactRatios(count: number, foldedShare: number, seed: number): { logRatio: number; isFolded: boolean }[] {

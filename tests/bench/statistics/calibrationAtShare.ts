@@ -1,5 +1,5 @@
 import { errorInOrder } from './calibrationError.js';
-import { seededRandom } from './seededRandom.js';
+import { seededRandom } from '../../../worker/dsp/seededRandom.js';
 
 export interface Calibration {
   /** Share of folded captures that the scores were computed for and that the drawn sets hold. */

@@ -4,7 +4,7 @@ import { defaultThresholds } from '../../../shared/schemas/thresholds.js';
 import { encodeWav } from '../../support/encodeWav.js';
 import { plainWelch } from '../simple/plainWelch.js';
 import { simpleLevels } from '../simple/simpleMethods.js';
-import { seededRandom } from '../statistics/seededRandom.js';
+import { seededRandom } from '../../../worker/dsp/seededRandom.js';
 import { between, gaussian, meanPower, pick } from './drawing.js';
 import { makeBursts, makeFilteredNoise, makeImpacts, makeSkewedNoise } from './families/broadband.js';
 import { makeIrregular } from './families/irregular.js';

@@ -4,7 +4,7 @@ import type { FoldEvidence } from '../../../shared/screening/FoldEvidence.js';
 import { judgeOrders } from '../../../shared/screening/judgeOrders.js';
 import { measureCapture } from '../../../worker/measure/measureCapture.js';
 import { measureOrders } from '../../../worker/measure/measureOrders.js';
-import { seededRandom } from '../../bench/statistics/seededRandom.js';
+import { seededRandom } from '../../../worker/dsp/seededRandom.js';
 import { buildRecord } from '../../support/buildRecord.js';
 import { memorySource } from '../../support/memorySource.js';
 import { seededNoise } from '../../support/seededNoise.js';
